@@ -1,0 +1,78 @@
+import type { PrototypeSection } from '../filter/filter.ts';
+import type { Evidence } from './evidence.ts';
+
+/** What a filter at one corner would do to signal and noise. */
+export interface ExpectedError {
+  /** Mean-square error against the signal delayed by `delaySeconds`, unit². */
+  readonly errorPower: number;
+  /** Noise behind the filter, unit². */
+  readonly noisePower: number;
+  /** Signal power behind the filter over that before it. */
+  readonly signalKept: number;
+  /** The single delay that suits the signal best, seconds. */
+  readonly delaySeconds: number;
+}
+
+/**
+ * Expected mean-square error ∫ |1 − H·e^{jωτ}|² S_signal + |H|² S_noise df without needing the signal's own spectrum:
+ * Σ |1 − H·e^{jωτ}|² P_active + Σ (2·Re(H·e^{jωτ}) − 1) P_noise has the same expectation (Stein 1981; Mallows 1973).
+ * Never below the Wiener bound, which the estimate may undershoot by chance. The delay is the best one unless it is fixed.
+ */
+export function expectedError(
+  evidence: Evidence,
+  sections: readonly PrototypeSection[],
+  cornerHz: number,
+  fixedDelaySeconds?: number,
+): ExpectedError {
+  const { frequencyHz, active, noise, signal } = evidence;
+  const points = frequencyHz.length;
+  const magnitude = new Float64Array(points);
+  const phase = new Float64Array(points);
+  let moment = 0;
+  let weight = 0;
+  let kept = 0;
+  let noisePower = 0;
+  for (let i = 0; i < points; i++) {
+    const [m, p] = respond(sections, frequencyHz[i] / cornerHz);
+    magnitude[i] = m;
+    phase[i] = p;
+    const omega = 2 * Math.PI * frequencyHz[i];
+    moment -= signal[i] * m * omega * p;
+    weight += signal[i] * m * omega * omega;
+    kept += signal[i] * m * m;
+    noisePower += noise[i] * m * m;
+  }
+  // Least squares of phase + ω·τ weighted by the signal: the τ that minimises the error to second order.
+  const delaySeconds = fixedDelaySeconds ?? (weight > 0 ? moment / weight : 0);
+  let errorPower = 0;
+  for (let i = 0; i < points; i++) {
+    const m = magnitude[i];
+    const real = m * Math.cos(phase[i] + 2 * Math.PI * frequencyHz[i] * delaySeconds);
+    errorPower += (1 + m * m - 2 * real) * active[i] + (2 * real - 1) * noise[i];
+  }
+  return {
+    errorPower: Math.max(errorPower, evidence.wienerPower),
+    noisePower,
+    signalKept: evidence.signalPower > 0 ? kept / evidence.signalPower : 1,
+    delaySeconds,
+  };
+}
+
+/** Magnitude and continuous phase (radians, from 0 at 0 Hz) of a low-pass prototype at frequency/corner. */
+function respond(sections: readonly PrototypeSection[], ratio: number): [number, number] {
+  let power = 1;
+  let phase = 0;
+  for (const { frequency, q } of sections) {
+    const x = ratio / frequency;
+    if (q === null) {
+      power /= 1 + x * x;
+      phase -= Math.atan(x);
+    } else {
+      const real = 1 - x * x;
+      const imaginary = x / q;
+      power /= real * real + imaginary * imaginary;
+      phase -= Math.atan2(imaginary, real);
+    }
+  }
+  return [Math.sqrt(power), phase];
+}

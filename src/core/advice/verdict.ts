@@ -1,0 +1,48 @@
+import type { Rival, Verdict } from './advice.ts';
+import type { Contest } from './rivals.ts';
+
+/** Errors this much apart, as a share of the noise power, are the same error. */
+const SAME_ERROR = 0.02;
+/** A line within the keep band matters from this share of the noise power. */
+const LINE_SHARE = 0.1;
+/** Noise within the keep band overlaps with the signal from this share of the signal's power. */
+const OVERLAP_SHARE = 0.25;
+/** Beyond these the best compromise no longer parts signal from noise. */
+const HOPELESS_DROOP_DB = 3;
+
+/** The chosen rival and how good the choice is. */
+export interface Choice {
+  readonly rival: Rival;
+  readonly verdict: Verdict;
+  /** Why no low-pass can part signal and noise; null unless inseparable. */
+  readonly overlap: 'no signal' | 'line within' | 'noise within' | 'line too near' | null;
+}
+
+/**
+ * Chooses: the simplest rival that meets all limits, of equal order the one with less error; where none does, the simplest
+ * of those whose error is least within 2 % of the noise power. `linesWithin` are powers (unit²) of noise lines in the keep band.
+ */
+export function choose(contest: Contest, rivals: readonly Rival[], linesWithin: readonly number[]): Choice {
+  const meeting = rivals.filter((rival) => rival.fails.length === 0);
+  const simplest = Math.min(...meeting.map((rival) => rival.order));
+  const least = (some: readonly Rival[]) => some.reduce((a, b) => (b.errorPower < a.errorPower ? b : a));
+  const rival = meeting.length > 0 ? least(meeting.filter((r) => r.order === simplest)) : nearLeast(contest, rivals);
+  const overlap = overlapOf(contest, rival, linesWithin);
+  if (overlap !== null) return { rival, verdict: 'inseparable', overlap };
+  return { rival, verdict: meeting.length > 0 ? 'clear' : 'compromise', overlap: null };
+}
+
+function nearLeast(contest: Contest, rivals: readonly Rival[]): Rival {
+  const least = Math.min(...rivals.map((rival) => rival.errorPower));
+  const enough = least + SAME_ERROR * contest.evidence.noisePower;
+  return rivals.find((rival) => rival.errorPower <= enough) as Rival;
+}
+
+function overlapOf(contest: Contest, rival: Rival, linesWithin: readonly number[]): Choice['overlap'] {
+  const { evidence, limits } = contest;
+  if (evidence.signalPower <= 0) return 'no signal';
+  if (linesWithin.some((power) => power >= LINE_SHARE * evidence.noisePower)) return 'line within';
+  if (evidence.noiseInBandPower > OVERLAP_SHARE * evidence.signalPower) return 'noise within';
+  const tooNear = rival.rejectionDb !== null && rival.rejectionDb < limits.rejectionDb / 2;
+  return tooNear || rival.droopDb > Math.max(HOPELESS_DROOP_DB, limits.droopDb) ? 'line too near' : null;
+}
