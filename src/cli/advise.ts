@@ -1,11 +1,10 @@
 import { createHash } from 'node:crypto';
 import { basename, extname, join } from 'node:path';
-import { pairChannels } from '../core/pair.ts';
+import { type PairedChannel, pairChannels } from '../core/pair.ts';
 import { writePlan } from '../core/plan.ts';
 import { openRecording } from '../core/recording/open.ts';
-import type { Recording } from '../core/recording/recording.ts';
 import type { Band } from '../core/spectrum/spectrum.ts';
-import { study } from '../core/study.ts';
+import { type StudyInput, study } from '../core/study.ts';
 import { type StudyFiles, studyDocument } from '../core/study-document.ts';
 import type { Study, StudySettings } from '../core/study-result.ts';
 import { reportCharts } from '../report/charts.ts';
@@ -39,9 +38,10 @@ export async function advise(quietPath: string, activePath: string, options: Adv
   const reading = options.rate === undefined ? {} : { rateHz: options.rate };
   const quiet = await openRecording(fileSource(quietPath), reading);
   const active = await openRecording(fileSource(activePath), reading);
+  const { channels } = pairChannels(quiet.facts, active.facts, settings);
   const files = filesOf(activePath, options);
   await prepareFolder(options.out);
-  const done = await studyAndFilter(quiet, active, settings, files);
+  const done = await studyAndFilter({ quiet, active, settings, version: VERSION }, channels, files);
   await writeWhole(
     files.plan as string,
     await writePlan(done, (text) => createHash('sha256').update(text).digest('hex')),
@@ -75,15 +75,16 @@ function filesOf(activePath: string, options: AdviseOptions): StudyFiles {
 }
 
 async function studyAndFilter(
-  quiet: Recording,
-  active: Recording,
-  settings: StudySettings,
+  input: StudyInput,
+  channels: readonly PairedChannel[],
   files: StudyFiles,
 ): Promise<Study> {
-  const input = { quiet, active, settings, version: VERSION };
   if (files.filtered === null) return study(input);
-  const channels = pairChannels(quiet.facts, active.facts, settings).channels.map(({ channel }) => channel);
-  const { file, sink } = filteredCsv(files.filtered, channels, active.facts.rateHz);
+  const { file, sink } = filteredCsv(
+    files.filtered,
+    channels.map(({ channel }) => channel),
+    input.active.facts.rateHz,
+  );
   try {
     const done = await study({ ...input, sink });
     await file.keep();
