@@ -19,6 +19,15 @@ export default defineConfig({
         },
       },
       { root, test: { name: 'reference', include: ['test/reference/**/*.test.ts'], testTimeout: 30_000 } },
+      {
+        root,
+        test: {
+          name: 'page',
+          include: ['test/page/**/*.test.ts'],
+          globalSetup: ['test/page/find-browser.ts'],
+          testTimeout: 60_000,
+        },
+      },
     ],
   },
 });
