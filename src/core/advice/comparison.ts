@@ -23,7 +23,7 @@ export function compareSpectra(active: Spectrum, quiet: Spectrum): Comparison {
   const activeSteps = new StepDensity(active);
   const quietSteps = new StepDensity(quiet);
   const rows: number[][] = [];
-  let low = Math.max(0, active.frequencyHz[0] - active.widthHz[0] / 2);
+  let low = 0;
   while (low < topHz * (1 - 1e-9)) {
     const finest = Math.max(activeSteps.widthAt(low), quietSteps.widthAt(low));
     let high = Math.min(topHz, Math.max(low * 2 ** (1 / BANDS_PER_OCTAVE), low + finest));
@@ -69,7 +69,12 @@ class StepDensity {
 
   constructor(spectrum: Spectrum) {
     this.spectrum = spectrum;
-    this.upperHz = Float64Array.from(spectrum.frequencyHz, (f, i) => f + spectrum.widthHz[i] / 2);
+    let upper = 0;
+    // The points' widths cover everything from 0 Hz on without a hole.
+    this.upperHz = spectrum.widthHz.map((width) => {
+      upper += width;
+      return upper;
+    });
   }
 
   widthAt(frequencyHz: number): number {

@@ -1,5 +1,5 @@
 import type { Filter } from '../filter/filter.ts';
-import { mergeLevels } from '../spectrum/merge.ts';
+import { mergeLevels, weightedDensity } from '../spectrum/merge.ts';
 import type { Band, LevelSpectrum } from '../spectrum/spectrum.ts';
 import type { KeepBand } from './advice.ts';
 import { layEvidence } from './evidence.ts';
@@ -44,20 +44,17 @@ function resample(from: Resampled, contest: Contest, uniform: () => number): Con
   const active = mergeLevels(from.activeLevels, activeWeights);
   const quiet = mergeLevels(from.quietLevels, weigh(from.quietLevels));
   const longest = from.activeLevels.reduce((a, b) => (b.segmentSamples > a.segmentSamples ? b : a));
+  const read = weightedDensity(longest, activeWeights);
   const highHz =
     from.keep.source === 'given' || from.keep.highHz <= 0
       ? from.keep.highHz
-      : excessEdge(weightedLevel(longest, activeWeights), quiet, from.noiseGainPower, from.excessLimits);
+      : excessEdge(
+          { ...longest, density: longest.density.map((_, bin) => read(bin)) },
+          quiet,
+          from.noiseGainPower,
+          from.excessLimits,
+        );
   const keep = { ...from.keep, highHz };
   const evidence = layEvidence(active, quiet, from.noiseGainPower, keep, from.inUse);
   return { ...contest, keepHighHz: highHz, evidence };
-}
-
-function weightedLevel(level: LevelSpectrum, weights: readonly number[]): LevelSpectrum {
-  const share = level.groups.map((group, g) => group.segments * weights[g % weights.length]);
-  const total = share.reduce((sum, w) => sum + w, 0);
-  const density = level.density.map((_, bin) =>
-    level.groups.reduce((sum, group, g) => sum + (share[g] / total) * group.density[bin], 0),
-  );
-  return { ...level, density };
 }

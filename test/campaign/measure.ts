@@ -1,0 +1,108 @@
+import { allowedCorners } from '../../src/core/advice/rivals.ts';
+import { discretise } from '../../src/core/filter/discretise.ts';
+import type { Filter } from '../../src/core/filter/filter.ts';
+import { gainDb } from '../../src/core/filter/response.ts';
+import { FilterFold } from '../../src/core/filter/run.ts';
+import { study } from '../../src/core/study.ts';
+import type { StudySettings } from '../../src/core/study-result.ts';
+import { makePair, type PairRecipe, type Truth } from './pairs.ts';
+
+export const SETTINGS: StudySettings = {
+  droopDb: 0.5,
+  rejectionDb: 20,
+  keepHz: null,
+  rejectHz: null,
+  channels: null,
+  rateHz: null,
+};
+
+/** What the advice was worth on a pair whose truth is known. */
+export interface Measured {
+  readonly verdict: string;
+  readonly filter: Filter;
+  /** (error − least error of the same family and order within the true limits) ÷ noise power; null where no corner meets them. */
+  readonly excessError: number | null;
+  /** Found first line over true one; null where none was found. */
+  readonly lineRatio: number | null;
+  /** Found keep edge over true one. */
+  readonly edgeRatio: number;
+  readonly trueDroopDb: number;
+  readonly trueRejectionDb: number;
+  readonly coversBest: boolean;
+}
+
+/** Studies a made pair and measures the advice against the truth on the recordings themselves. */
+export async function measure(recipe: PairRecipe, seed: number): Promise<Measured> {
+  const { quiet, active, truth } = makePair(recipe, seed);
+  const result = await study({ quiet, active, settings: SETTINGS, version: 'campaign' });
+  const { advice, keep } = result.channels[0];
+  const { shape, family, order, cornerHz } = advice;
+  const filter: Filter = { shape, family, order, cornerHz };
+  const noisy = await samplesOf(active);
+  const errorAt = (corner: number) => delayedError(noisy, truth.signal, { ...filter, cornerHz: corner }, recipe);
+  const best = bestWithinTruth(recipe, truth, filter, errorAt);
+  return {
+    verdict: advice.verdict,
+    filter,
+    excessError: best === null ? null : (errorAt(cornerHz) - best.error) / truth.noisePower,
+    lineRatio: advice.firstLineHz === null ? null : advice.firstLineHz / truth.firstLineHz,
+    edgeRatio: keep.highHz / truth.keepHighHz,
+    trueDroopDb: -gainDb(filter, truth.keepHighHz),
+    trueRejectionDb: -gainDb(filter, truth.firstLineHz),
+    coversBest: best !== null && best.cornerHz >= advice.cornerRangeHz[0] && best.cornerHz <= advice.cornerRangeHz[1],
+  };
+}
+
+function bestWithinTruth(recipe: PairRecipe, truth: Truth, filter: Filter, errorAt: (corner: number) => number) {
+  const contest = {
+    limits: { droopDb: SETTINGS.droopDb, rejectionDb: SETTINGS.rejectionDb },
+    keepHighHz: truth.keepHighHz,
+    firstLineHz: truth.firstLineHz,
+    highestCornerHz: 0.45 * recipe.rateHz,
+  };
+  const { lowHz, highHz } = allowedCorners(contest, filter.family, filter.order);
+  if (highHz < lowHz) return null;
+  const corners = Array.from({ length: 9 }, (_, i) => lowHz * (highHz / lowHz) ** (i / 8));
+  return corners
+    .map((cornerHz) => ({ cornerHz, error: errorAt(cornerHz) }))
+    .reduce((a, b) => (b.error < a.error ? b : a));
+}
+
+async function samplesOf(recording: { blocks(): AsyncIterable<{ channels: readonly Float64Array[] }> }) {
+  const blocks: Float64Array[] = [];
+  for await (const block of recording.blocks()) blocks.push(block.channels[0]);
+  const all = new Float64Array(blocks.reduce((sum, block) => sum + block.length, 0));
+  let at = 0;
+  for (const block of blocks) {
+    all.set(block, at);
+    at += block.length;
+  }
+  return all;
+}
+
+/** Mean-square error of the filtered recording against the signal (plus offset), at the best single delay, once settled. */
+function delayedError(noisy: Float64Array, signal: Float64Array, filter: Filter, recipe: PairRecipe): number {
+  const filtered = new FilterFold(discretise(filter, recipe.rateHz)).push(noisy, true);
+  const skip = Math.min(Math.floor(noisy.length / 4), Math.ceil((4 / filter.cornerHz) * recipe.rateHz) + 4);
+  const error = (delay: number) => {
+    let sum = 0;
+    const whole = Math.floor(delay);
+    const part = delay - whole;
+    for (let i = skip; i < filtered.length; i++) {
+      const k = i - whole;
+      const wanted = signal[k] + part * (signal[k - 1] - signal[k]) + recipe.offset;
+      sum += (filtered[i] - wanted) ** 2;
+    }
+    return sum / (filtered.length - skip);
+  };
+  let low = 0;
+  let high = Math.min(skip - 2, (filter.order * recipe.rateHz) / filter.cornerHz);
+  const golden = (Math.sqrt(5) - 1) / 2;
+  for (let round = 0; round < 22; round++) {
+    const a = high - golden * (high - low);
+    const b = low + golden * (high - low);
+    if (error(a) < error(b)) high = b;
+    else low = a;
+  }
+  return error((low + high) / 2);
+}
