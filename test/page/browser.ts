@@ -3,7 +3,6 @@ import { existsSync } from 'node:fs';
 import { mkdir, mkdtemp, rename, rm, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { dirname, join } from 'node:path';
-import { fileURLToPath } from 'node:url';
 import { promisify } from 'node:util';
 import { type Browser, chromium } from 'playwright-core';
 
@@ -87,10 +86,9 @@ async function unpackInto(folder: string): Promise<void> {
   }
 }
 
-/** The system's fonts, the one that came with the browser, and ours, which has every sign that we print. */
+/** The system's fonts and the one that came with the browser, which alone is there on a bare machine. */
 async function fontList(folder: string): Promise<string> {
-  const ours = fileURLToPath(new URL('../../node_modules/@fontsource/dejavu-sans/files', import.meta.url));
-  const folders = ['/usr/share/fonts', join(folder, 'fonts'), ours];
+  const folders = ['/usr/share/fonts', join(folder, 'fonts')];
   const path = join(folder, 'fonts.conf');
   await mkdir(join(folder, 'font-cache'), { recursive: true });
   await writeFile(
