@@ -1,0 +1,250 @@
+import { estimateFloor, type Floor } from './floor.ts';
+import { foldedFrom } from './folding.ts';
+import { nameFamilies } from './harmonics.ts';
+import { chiSquareQuantile, fQuantile } from './quantiles.ts';
+import type { LevelSpectrum, NoiseLine } from './spectrum.ts';
+import { HANN, hannLobe, hannOffset, hannSideLobes } from './window.ts';
+
+/** How lines are told from chance and from resonances. */
+export interface LineOptions {
+  /** Chance that pure noise shows any line at all in one spectrum. Default 0.001. */
+  readonly falseAlarms?: number;
+  /** A peak wider than a sine's main lobe is still one line if it is no wider than this part of its frequency. Default 0.01. */
+  readonly narrowRatio?: number;
+}
+
+/** A peak that stands out of the floor more than chance allows. */
+export interface Peak {
+  readonly frequencyHz: number;
+  /** Uncertainty of the frequency, about two standard deviations, Hz. */
+  readonly toleranceHz: number;
+  /** Amplitude of a sine with the peak's power, in the channel's unit. */
+  readonly amplitude: number;
+  readonly aboveFloorDb: number;
+  /** Width, Hz: the peak's power over its density. A steady sine shows 1.5 to 2.1 bins. */
+  readonly width: number;
+  /** `line`: no wider than a sine or a slightly unsteady one. `resonance`: broader than that. */
+  readonly kind: 'line' | 'resonance';
+}
+
+/** Bins 0 to 2 hold the removed mean and drift. */
+const FIRST_BIN = 3;
+/** Main lobe of the Hann window: two bins to either side. */
+const LOBE = 2;
+/** Width at a quarter of the density: exactly 2 bins for a sine, a clear factor more for a resonance. */
+const WIDEST_LOBE = 3.5;
+/** Bins to either side of the lobe that a line must stand out of. */
+const SURROUNDINGS = 12;
+/** Chance that a bin on a broad hump stands out of its surroundings. */
+const LOCAL_CHANCE = 1e-4;
+/** Side lobes of averaged segments stay below this multiple of their crests. */
+const SIDE_LOBE_MARGIN = 4;
+
+/**
+ * Noise lines of a quiet spectrum, by frequency, with harmonic families and folded frequencies named. See `findPeaks`;
+ * its resonances are left out.
+ */
+export function findLines(level: LevelSpectrum, options: LineOptions = {}): NoiseLine[] {
+  const lines = findPeaks(level, options).filter((peak) => peak.kind === 'line');
+  const families = nameFamilies(lines);
+  return lines.map(({ frequencyHz, toleranceHz, amplitude, aboveFloorDb }, i) => ({
+    frequencyHz,
+    amplitude,
+    aboveFloorDb,
+    family: families[i],
+    foldedFrom: foldedFrom(frequencyHz, level.rateHz, toleranceHz),
+  }));
+}
+
+/**
+ * Peaks of one level above its noise floor, by frequency. A bin must exceed the floor by a χ² test at one false alarm per thousand
+ * spectra (Bonferroni over the bins), the floor's own uncertainty counted in (an F test, which is the χ² test once the floor is
+ * known well), and stand out of its surroundings. Strongest first; what lies within a main lobe of a stronger peak belongs to it,
+ * and side lobes, falling 18 dB an octave (Harris 1978), count as floor. Frequencies come from the three bins of the main lobe,
+ * amplitudes from its power less the floor.
+ */
+export function findPeaks(level: LevelSpectrum, options: LineOptions = {}): Peak[] {
+  return new PeakSearch(level, options).run().sort((a, b) => a.frequencyHz - b.frequencyHz);
+}
+
+class PeakSearch {
+  private readonly density: Float64Array;
+  private readonly binHz: number;
+  private readonly dof: number;
+  /** Floor by bin; the side lobes of the peaks found so far are added to it. */
+  private readonly floor: Float64Array;
+  private readonly floorDof: Float64Array;
+  /** 0 free, 1 belongs to a line, 2 belongs to a resonance. */
+  private readonly taken: Uint8Array;
+  private readonly endBin: number;
+  private readonly chance: number;
+  private readonly narrowRatio: number;
+
+  constructor(level: LevelSpectrum, options: LineOptions) {
+    this.density = level.density;
+    this.binHz = level.rateHz / level.segmentSamples;
+    this.dof = level.degreesOfFreedom;
+    const { density, degreesOfFreedom } = floorOfBins(level);
+    this.floor = density;
+    this.floorDof = degreesOfFreedom;
+    this.taken = new Uint8Array(this.density.length);
+    this.endBin = this.density.length - 2;
+    this.chance = (options.falseAlarms ?? 1e-3) / Math.max(1, this.endBin - FIRST_BIN);
+    this.narrowRatio = options.narrowRatio ?? 0.01;
+  }
+
+  run(): Peak[] {
+    const peaks: Peak[] = [];
+    for (const bin of this.candidates()) {
+      if (this.taken[bin] !== 0 || !this.exceedsFloor(bin)) continue;
+      const peak = this.standsOut(bin) ? this.line(bin) : this.hump(bin);
+      if (peak !== null) peaks.push(peak);
+    }
+    return peaks;
+  }
+
+  /** Local maxima above the least threshold, strongest first. */
+  private candidates(): number[] {
+    const { density, floor } = this;
+    const least = chiSquareQuantile(1 - this.chance, this.dof) / this.dof;
+    const bins: number[] = [];
+    for (let k = FIRST_BIN; k < this.endBin; k++) {
+      if (density[k] > least * floor[k] && density[k] >= density[k - 1] && density[k] > density[k + 1]) bins.push(k);
+    }
+    return bins.sort((a, b) => density[b] - density[a]);
+  }
+
+  private exceedsFloor(bin: number): boolean {
+    return this.density[bin] > fQuantile(1 - this.chance, this.dof, this.floorDof[bin]) * this.floor[bin];
+  }
+
+  /** True where the peak is as narrow as a main lobe and rises out of both sides, as a spike on a resonance does not. */
+  private standsOut(bin: number): boolean {
+    const around = Math.max(this.floor[bin], this.surroundings(bin, -1), this.surroundings(bin, 1));
+    const localDof = (0.5 * this.dof * SURROUNDINGS) / HANN.neighbourInflation;
+    if (this.density[bin] < fQuantile(1 - LOCAL_CHANCE, this.dof, localDof) * around) return false;
+    const quarter = around + (this.density[bin] - around) / 4;
+    return this.reach(bin, -1, quarter) + this.reach(bin, 1, quarter) <= WIDEST_LOBE;
+  }
+
+  /** Level of the bins behind the main lobe on one side: their lower quartile, since other lines may stand among them. */
+  private surroundings(bin: number, side: 1 | -1): number {
+    const values: number[] = [];
+    for (let d = LOBE + 1; d <= LOBE + SURROUNDINGS; d++) {
+      const k = bin + side * d;
+      if (k >= FIRST_BIN && k < this.endBin) values.push(this.density[k]);
+    }
+    if (values.length < SURROUNDINGS / 2) return 0;
+    values.sort((a, b) => a - b);
+    return (values[Math.floor(values.length / 4)] * this.dof) / chiSquareQuantile(0.27, this.dof);
+  }
+
+  /** Distance from a peak at which the density has fallen to a value, in bins, by straight line between bins. */
+  private reach(bin: number, side: 1 | -1, value: number): number {
+    const { density } = this;
+    let k = bin;
+    while (k + side > 0 && k + side < density.length && density[k + side] > value) k += side;
+    const next = density[k + side] ?? 0;
+    return Math.abs(k - bin) + (density[k] - value) / Math.max(density[k] - next, Number.MIN_VALUE);
+  }
+
+  private line(bin: number): Peak {
+    const { density, floor } = this;
+    const above = (k: number) => density[k] - floor[k];
+    const offset = hannOffset(above(bin - 1), above(bin), above(bin + 1));
+    // Where another peak stands close by, only the bins on this side of the middle are this line's.
+    const half = this.freeBins(bin);
+    let lobe = 0;
+    let share = 0;
+    for (let j = -half; j <= half; j++) {
+      lobe += above(bin + j);
+      share += hannLobe(j - offset);
+    }
+    const power = (Math.max(0, lobe) * this.binHz * HANN.noiseBandwidthBins) / share;
+    const aboveFloor = density[bin] / floor[bin];
+    this.take(bin - LOBE, bin + LOBE, 1);
+    this.addSideLobes(bin + offset, (power * 2) / (3 * this.binHz));
+    return {
+      frequencyHz: (bin + offset) * this.binHz,
+      toleranceHz: (0.02 + 1 / Math.sqrt(this.dof * Math.max(aboveFloor - 1, 0.1))) * this.binHz,
+      amplitude: Math.sqrt(2 * power),
+      aboveFloorDb: 10 * Math.log10(aboveFloor),
+      width: (lobe / above(bin)) * this.binHz,
+      kind: 'line',
+    };
+  }
+
+  /** Bins to either side, two at the most, that no stronger peak has taken and no other peak shares. */
+  private freeBins(bin: number): number {
+    for (let d = 1; d <= LOBE; d++) {
+      if (this.taken[bin - d] || this.taken[bin + d]) return Math.max(1, d - 1);
+    }
+    const rises = (side: 1 | -1) => {
+      const [near, far] = [bin + side * LOBE, bin + side * (LOBE + 1)];
+      return this.density[far] > this.density[near] && this.density[far] > 0.05 * this.density[bin];
+    };
+    return rises(1) || rises(-1) ? 1 : LOBE;
+  }
+
+  /** A peak wider than a main lobe: all bins around it down to a tenth. Null for the skirt of one found before. */
+  private hump(bin: number): Peak | null {
+    const { density, floor, taken } = this;
+    const tenth = (k: number) => floor[k] + 0.1 * (density[bin] - floor[bin]);
+    const belongs = (k: number) =>
+      k >= FIRST_BIN && k < this.endBin && taken[k] === 0 && (density[k] > tenth(k) || density[k + 1] > tenth(k + 1));
+    let from = bin;
+    let to = bin;
+    while (belongs(from - 1)) from--;
+    while (belongs(to + 1)) to++;
+    const skirt = taken[from - 1] === 2 || taken[to + 1] === 2;
+    let power = 0;
+    let moment = 0;
+    for (let k = from; k <= to; k++) {
+      power += density[k] - floor[k];
+      moment += (density[k] - floor[k]) * k;
+    }
+    this.take(from - LOBE, to + LOBE, 2);
+    if (skirt || power <= 0) return null;
+    const width = (power / (density[bin] - floor[bin])) * this.binHz;
+    const frequencyHz = (moment / power) * this.binHz;
+    return {
+      frequencyHz,
+      toleranceHz: width / 2,
+      amplitude: Math.sqrt(2 * power * this.binHz),
+      aboveFloorDb: 10 * Math.log10(density[bin] / floor[bin]),
+      width,
+      kind: width <= this.narrowRatio * frequencyHz ? 'line' : 'resonance',
+    };
+  }
+
+  private take(from: number, to: number, by: 1 | 2): void {
+    for (let k = Math.max(0, from); k <= Math.min(this.taken.length - 1, to); k++)
+      if (this.taken[k] === 0) this.taken[k] = by;
+  }
+
+  /** Raises the floor by the side lobes of a line whose density would peak at `peak`, as far as they matter. */
+  private addSideLobes(position: number, peak: number): void {
+    for (const side of [-1, 1]) {
+      for (let d = LOBE + 1; ; d++) {
+        const k = Math.round(position) + side * d;
+        if (k < 0 || k >= this.floor.length) break;
+        const leak = SIDE_LOBE_MARGIN * peak * hannSideLobes(k - position);
+        if (leak < 0.01 * this.floor[k]) break;
+        this.floor[k] += leak;
+      }
+    }
+  }
+}
+
+/** Floor of a level by bin; bins 0 to 2, which hold the removed mean and drift, take the floor of bin 3. */
+function floorOfBins(level: LevelSpectrum): Floor {
+  const first = Math.min(FIRST_BIN, level.density.length - 1);
+  const points = level.density.length - first;
+  const found = estimateFloor({
+    frequencyHz: Float64Array.from({ length: points }, (_, i) => i + first),
+    density: level.density.subarray(first),
+    degreesOfFreedom: new Float64Array(points).fill(level.degreesOfFreedom),
+  });
+  const byBin = (values: Float64Array) => Float64Array.from(level.density, (_, k) => values[Math.max(0, k - first)]);
+  return { density: byBin(found.density), degreesOfFreedom: byBin(found.degreesOfFreedom) };
+}
