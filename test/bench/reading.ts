@@ -3,6 +3,7 @@
  * whole text with numbers converted, and against `cat`. The rounds take turns, so that a busy machine slows all three alike.
  */
 import { execFileSync } from 'node:child_process';
+import { once } from 'node:events';
 import { createWriteStream } from 'node:fs';
 import { mkdtemp, readFile, rm, stat } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
@@ -46,9 +47,7 @@ async function writeLog(target: string): Promise<void> {
   for (let row = 0; row < ROWS; row++) {
     const swing = Math.sin(row / 300);
     const values = [swing, 0.5 * swing, 9.80665].map((value) => (value + 0.1 * noise()).toFixed(5));
-    if (!stream.write(`${(row / 1000).toFixed(3)},${values.join(',')}\n`)) {
-      await new Promise((resume) => stream.once('drain', resume));
-    }
+    if (!stream.write(`${(row / 1000).toFixed(3)},${values.join(',')}\n`)) await once(stream, 'drain');
   }
   stream.end();
   await finished(stream);
