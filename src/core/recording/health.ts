@@ -1,0 +1,155 @@
+import { count, decibels, hertz, percent, seconds } from '../figure.ts';
+import { UserError } from '../user-error.ts';
+import type { Repair } from './clock.ts';
+import type { ColumnFold, Stretch } from './column-fold.ts';
+import { LONGEST_BRIDGE } from './column-fold.ts';
+import type { FaultCount } from './faults.ts';
+import { interpolationLossDb } from './interpolation.ts';
+import type { Note } from './recording.ts';
+import type { Survey } from './survey.ts';
+import type { TimeBase } from './time-base.ts';
+
+/** Shortest recording that tells anything of frequencies, samples. */
+export const FEWEST_SAMPLES = 64;
+/** Share of unreadable rows from which a file is refused. */
+const UNREADABLE_SHARE = 0.01;
+
+/** A value column by its name. */
+export interface NamedColumn {
+  readonly name: string;
+  readonly fold: ColumnFold;
+}
+
+/** What the notes are made of. */
+export interface Findings {
+  readonly survey: Survey;
+  readonly time: TimeBase;
+  readonly kept: readonly NamedColumn[];
+  readonly faults: FaultCount;
+  readonly stretches: readonly Stretch[];
+  readonly tooShort: number;
+  readonly nameOf: (field: number) => string;
+}
+
+/** Throws UserError('input') with the first five places where more than 1 % of the rows cannot be read. */
+export function refuseUnreadable(
+  file: string,
+  rows: number,
+  faults: FaultCount,
+  nameOf: (field: number) => string,
+): void {
+  if (faults.rows <= UNREADABLE_SHARE * rows) return;
+  const places = faults.first.map(({ line, field, text }) =>
+    field < 0 ? `row ${line}: wrong number of fields, "${text}"` : `row ${line}, column "${nameOf(field)}": "${text}"`,
+  );
+  const share = percent(faults.rows / rows);
+  throw new UserError(
+    'input',
+    `${file}: ${count(faults.rows)} of ${count(rows)} rows (${share}) cannot be read, the first ones being ${places.join('; ')}; mend them or export the recording again.`,
+  );
+}
+
+/** Every repair and oddity in one sentence each, with its count and first place. */
+export function notes(findings: Findings): Note[] {
+  return [...timeNotes(findings), ...stampNotes(findings), ...valueNotes(findings)];
+}
+
+function timeNotes({ survey, time, tooShort }: Findings): Note[] {
+  const { reading } = survey;
+  const { longest, gaps, rateHz, uneven } = time;
+  const found: Note[] = [];
+  if (reading.time.guess !== null)
+    found.push(
+      warning(
+        `The time column "${reading.time.name}" has no unit; by ${reading.time.guess} it is taken for ${reading.time.kind}, which makes ${hertz(rateHz, 4)}; write the unit into the header, or give --rate, where that is wrong.`,
+      ),
+    );
+  if (gaps.length > 0) {
+    const [{ row, atSeconds, lengthSeconds }] = gaps;
+    found.push(
+      warning(
+        `${plural(gaps.length, 'gap')} in time, the first of ${seconds(lengthSeconds)} before row ${row}, at ${seconds(atSeconds)}; nothing is computed across ${gaps.length > 1 ? 'them' : 'it'}.`,
+      ),
+    );
+  }
+  if (uneven)
+    found.push(
+      warning(
+        `The stamps are uneven by ${seconds(longest.jitterSeconds)} (${percent(longest.jitterSeconds * rateHz)} of a period); the samples are interpolated onto an even ${hertz(rateHz, 4)}, which costs up to ${decibels(interpolationLossDb(0.1))} at ${hertz(rateHz / 10)} and ${decibels(interpolationLossDb(0.25))} at ${hertz(rateHz / 4)}.`,
+      ),
+    );
+  else if (longest.jitterSeconds * rateHz > 1 && !survey.rule.coarse)
+    found.push(
+      note(
+        `The clock wanders by ${seconds(longest.jitterSeconds)} about a straight line while its steps stay even; the samples are taken as even.`,
+      ),
+    );
+  if (survey.rule.coarse)
+    found.push(
+      note(
+        `The stamps are coarser (${seconds(survey.rule.resolutionSeconds)}) than the sample period; the samples are spread along a straight line through them.`,
+      ),
+    );
+  if (tooShort > 0) found.push(note(`${plural(tooShort, 'run')} of a single sample between gaps left out.`));
+  return found;
+}
+
+function stampNotes({ survey }: Findings): Note[] {
+  const { repeated, filled, lost, wrapped } = survey.repairs;
+  const sentence = (repair: Repair, text: (what: string) => string) =>
+    repair.count === 0 ? [] : [warning(text(`${plural(repair.count, 'row')}, the first in row ${repair.firstLine},`))];
+  return [
+    ...sentence(repeated, (rows) => `${rows} repeated the time stamp before and were dropped.`),
+    ...sentence(filled, (rows) => `${rows} had no time stamp and were placed one period behind the row before.`),
+    ...sentence(lost, (rows) => `${rows} had no time stamp and could not be placed; they were dropped.`),
+    ...(wrapped.count === 0
+      ? []
+      : [
+          note(
+            `The clock started again from zero ${wrapped.count === 1 ? 'once' : `${count(wrapped.count)} times`}, first in row ${wrapped.firstLine}; the time was carried on.`,
+          ),
+        ]),
+  ];
+}
+
+function valueNotes({ survey, kept, faults, stretches, nameOf }: Findings): Note[] {
+  const found: Note[] = [];
+  if (faults.rows > 0) {
+    const [{ line, field, text }] = faults.first;
+    const where = field < 0 ? `row ${line}: "${text}"` : `row ${line}, column "${nameOf(field)}": "${text}"`;
+    found.push(
+      warning(`${plural(faults.rows, 'row')} could not be read and count as missing, the first being ${where}.`),
+    );
+  }
+  for (const { name, fold } of kept) {
+    if (fold.bridged > 0)
+      found.push(
+        note(
+          `Channel "${name}": ${plural(fold.bridged, 'missing value')} bridged by a straight line, the first in row ${fold.firstBridgedLine}.`,
+        ),
+      );
+  }
+  if (stretches.length > 0) {
+    const first = stretches.reduce((a, b) => (b.fromRow < a.fromRow ? b : a));
+    found.push(
+      warning(
+        `${plural(stretches.length, 'stretch', 'stretches')} of more than ${LONGEST_BRIDGE} missing values, the first from row ${first.line}; the recording is cut there.`,
+      ),
+    );
+  }
+  if (survey.faults.incompleteLine > 0)
+    found.push(note(`The last row, ${survey.faults.incompleteLine}, is incomplete and was dropped.`));
+  return found;
+}
+
+function plural(number: number, one: string, many = `${one}s`): string {
+  return `${count(number)} ${number === 1 ? one : many}`;
+}
+
+function note(text: string): Note {
+  return { severity: 'note', text };
+}
+
+function warning(text: string): Note {
+  return { severity: 'warning', text };
+}

@@ -1,0 +1,119 @@
+import Papa from 'papaparse';
+import { RowWriter } from './row-writer.ts';
+import type { Layout, RowBatch, RowLane } from './rows.ts';
+
+const QUOTE = '"';
+const COMMENT = /^\s*(?:#|%|\/\/)/;
+
+/** Splits a piece of text that ends at a line end into records of fields; a delimiter of one blank stands for any run of blanks. */
+export function splitFields(text: string, delimiter: string, newline: '\n' | '\r\n' | '\r'): string[][] {
+  if (text === '') return [['']];
+  if (delimiter !== ' ') return Papa.parse<string[]>(text, { delimiter, newline, quoteChar: QUOTE }).data;
+  return text.split(newline).map((line) =>
+    line
+      .trim()
+      .split(/\s+/)
+      .map((field) => field.replace(/^"(.*)"$/, '$1')),
+  );
+}
+
+/** True for a line that only comments, in its first field. */
+export function isComment(firstField: string): boolean {
+  return COMMENT.test(firstField);
+}
+
+/** The lane for everything with quotes: papaparse on pieces cut at line ends outside quotes. */
+export class TextLane implements RowLane {
+  private readonly writer: RowWriter;
+  private readonly layout: Layout;
+  private readonly decoder: TextDecoder;
+  private readonly newline: '\n' | '\r';
+  private rest = '';
+  /** Quotes are open at the end of `rest` up to `seen`, and the last line end outside quotes before it. */
+  private seen = 0;
+  private quoted = false;
+  private cut = 0;
+  private records: string[][] = [];
+  private nextRecord = 0;
+  private line = 1;
+  private ended = false;
+  private terminated = true;
+
+  constructor(layout: Layout, capacity: number) {
+    this.layout = layout;
+    this.writer = new RowWriter(layout, capacity);
+    const { encoding, newline } = layout.dialect;
+    this.decoder = new TextDecoder(encoding === 'latin1' ? 'windows-1252' : 'utf-8');
+    this.newline = newline === '\r' ? '\r' : '\n';
+  }
+
+  get faults() {
+    return this.writer.faults;
+  }
+
+  feed(bytes: Uint8Array): void {
+    this.take(this.decoder.decode(bytes, { stream: true }));
+  }
+
+  finish(): void {
+    this.take(this.decoder.decode());
+    this.terminated = this.rest.slice(this.cut) === '';
+    if (!this.terminated) this.rest += this.newline;
+    this.cut = this.rest.length;
+    this.ended = true;
+  }
+
+  next(): RowBatch | null {
+    const { batch } = this.writer;
+    if (this.writer.full) batch.length = 0;
+    for (;;) {
+      while (this.nextRecord < this.records.length) {
+        this.row(this.records[this.nextRecord++]);
+        if (this.writer.full) return batch;
+      }
+      if (this.cut === 0) break;
+      this.split();
+    }
+    if (!this.ended || batch.length === 0) return null;
+    this.ended = false;
+    return batch;
+  }
+
+  private take(text: string): void {
+    this.rest += text;
+    for (; this.seen < this.rest.length; this.seen++) {
+      const sign = this.rest[this.seen];
+      if (sign === QUOTE) this.quoted = !this.quoted && this.mayOpen();
+      else if (sign === this.newline && !this.quoted) this.cut = this.seen + 1;
+    }
+  }
+
+  /** A quote opens a field at its start only, or again behind the one that closed it: a doubled quote within. */
+  private mayOpen(): boolean {
+    const before = this.seen === 0 ? this.newline : this.rest[this.seen - 1];
+    return before === this.newline || before === this.layout.dialect.delimiter || before === QUOTE;
+  }
+
+  private split(): void {
+    const piece = this.rest.slice(0, this.cut - 1);
+    this.rest = this.rest.slice(this.cut);
+    this.seen = this.rest.length;
+    this.cut = 0;
+    this.records = splitFields(piece, this.layout.dialect.delimiter, this.newline);
+    this.nextRecord = 0;
+  }
+
+  private row(fields: string[]): void {
+    const { writer, layout, line } = this;
+    this.line += 1 + fields.reduce((ends, field) => ends + field.split(this.newline).length - 1, 0);
+    if (line < layout.firstDataLine || isComment(fields[0])) return;
+    if (fields.length === 1 && fields[0].trim() === '') return;
+    writer.open();
+    fields.forEach((text, field) => {
+      writer.put(line, field, text);
+    });
+    const extra = fields.length === layout.fields + 1 && fields[layout.fields].trim() === '' ? 1 : 0;
+    const last = this.ended && !this.terminated && this.nextRecord === this.records.length && this.rest === '';
+    writer.close(line, fields.length - extra, last, () => fields.join(layout.dialect.delimiter));
+  }
+}
