@@ -1,4 +1,4 @@
-import { count, decibels, hertz, percent, seconds } from '../figure.ts';
+import { count, hertz, percent, quantity, seconds } from '../figure.ts';
 import { UserError } from '../user-error.ts';
 import type { Repair } from './clock.ts';
 import type { ColumnFold, Stretch } from './column-fold.ts';
@@ -75,7 +75,7 @@ function timeNotes({ survey, time, tooShort }: Findings): Note[] {
   if (uneven)
     found.push(
       warning(
-        `The stamps are uneven by ${seconds(longest.jitterSeconds)} (${percent(longest.jitterSeconds * rateHz)} of a period); the samples are interpolated onto an even ${hertz(rateHz, 4)}, which costs up to ${decibels(interpolationLossDb(0.1))} at ${hertz(rateHz / 10)} and ${decibels(interpolationLossDb(0.25))} at ${hertz(rateHz / 4)}.`,
+        `The stamps are uneven by ${seconds(longest.jitterSeconds)} (${percent(longest.jitterSeconds * rateHz)} of a period); the samples are interpolated onto an even ${hertz(rateHz, 4)}, which costs up to ${loss(0.1)} at ${hertz(rateHz / 10)} and ${loss(0.25)} at ${hertz(rateHz / 4)}.`,
       ),
     );
   else if (longest.jitterSeconds * rateHz > 1 && !survey.rule.coarse)
@@ -140,6 +140,10 @@ function valueNotes({ survey, kept, faults, stretches, nameOf }: Findings): Note
   if (survey.faults.incompleteLine > 0)
     found.push(note(`The last row, ${survey.faults.incompleteLine}, is incomplete and was dropped.`));
   return found;
+}
+
+function loss(ratio: number): string {
+  return quantity(interpolationLossDb(ratio), 'dB', 2);
 }
 
 function plural(number: number, one: string, many = `${one}s`): string {

@@ -75,17 +75,15 @@ function openingSteps(stamps: Float64Array, same: Uint8Array): { steps: Float64A
   return { steps: Float64Array.from(steps), coarse: differing > equal && differing > 0.002 * steps.length };
 }
 
-/** The largest power of ten of which all stamps are multiples, units of the stamps: the last digit written. */
+/** The largest power of ten of which all stamps are multiples, units of the stamps: the last digit written. 0 where it is beyond a double. */
 function decimalResolution(stamps: Float64Array): number {
   const values = stamps.filter((stamp) => !Number.isNaN(stamp));
-  const multiples = (size: number) =>
-    values.every((value) => {
-      const count = value / size;
-      return Math.abs(count - Math.round(count)) <= 1e-4 + 4 * Number.EPSILON * Math.abs(count);
-    });
+  const largest = values.reduce((size, value) => Math.max(size, Math.abs(value)), 1);
   for (let power = 9; power > -12; power--) {
     const size = power < 0 ? 1 / 10 ** -power : 10 ** power;
-    if (multiples(size)) return size;
+    const rounding = (4 * Number.EPSILON * largest) / size;
+    if (rounding > 0.1) return 0;
+    if (values.every((value) => Math.abs(value / size - Math.round(value / size)) <= rounding)) return size;
   }
   return 0;
 }
