@@ -1,4 +1,5 @@
 import type { PrototypeSection } from '../filter/filter.ts';
+import { respond } from '../filter/response.ts';
 import type { Evidence } from './evidence.ts';
 
 /** What a filter at one corner would do to signal and noise. */
@@ -56,23 +57,4 @@ export function expectedError(
     signalKept: evidence.signalPower > 0 ? kept / evidence.signalPower : 1,
     delaySeconds,
   };
-}
-
-/** Magnitude and continuous phase (radians, from 0 at 0 Hz) of a low-pass prototype at frequency/corner. */
-function respond(sections: readonly PrototypeSection[], ratio: number): [number, number] {
-  let power = 1;
-  let phase = 0;
-  for (const { frequency, q } of sections) {
-    const x = ratio / frequency;
-    if (q === null) {
-      power /= 1 + x * x;
-      phase -= Math.atan(x);
-    } else {
-      const real = 1 - x * x;
-      const imaginary = x / q;
-      power /= real * real + imaginary * imaginary;
-      phase -= Math.atan2(imaginary, real);
-    }
-  }
-  return [Math.sqrt(power), phase];
 }

@@ -19,8 +19,8 @@ export interface Choice {
 }
 
 /**
- * Chooses: the simplest rival that meets all limits, of equal order the one with less error; where none does, the simplest
- * of those whose error is least within 2 % of the noise power. `linesWithin` are powers (unit²) of noise lines in the keep band.
+ * Chooses: the simplest rival that meets all limits, of equal order the one with less error; where none does, of
+ * those with the least error the one that falls least short of the limits. `linesWithin` are powers (unit²) of noise lines in the keep band.
  */
 export function choose(contest: Contest, rivals: readonly Rival[], linesWithin: readonly number[]): Choice {
   const meeting = rivals.filter((rival) => rival.fails.length === 0);
@@ -32,10 +32,14 @@ export function choose(contest: Contest, rivals: readonly Rival[], linesWithin: 
   return { rival, verdict: meeting.length > 0 ? 'clear' : 'compromise', overlap: null };
 }
 
-function nearLeast(contest: Contest, rivals: readonly Rival[]): Rival {
-  const least = Math.min(...rivals.map((rival) => rival.errorPower));
-  const enough = least + SAME_ERROR * contest.evidence.noisePower;
-  return rivals.find((rival) => rival.errorPower <= enough) as Rival;
+/** Of the rivals whose error is least but for 2 % of the noise power, the one that falls least short of the limits. */
+function nearLeast({ evidence, limits }: Contest, rivals: readonly Rival[]): Rival {
+  const enough = Math.min(...rivals.map((rival) => rival.errorPower)) + SAME_ERROR * evidence.noisePower;
+  const shortfallDb = ({ droopDb, rejectionDb }: Rival) =>
+    Math.max(0, droopDb - limits.droopDb) + Math.max(0, limits.rejectionDb - (rejectionDb ?? limits.rejectionDb));
+  return rivals
+    .filter((rival) => rival.errorPower <= enough)
+    .reduce((a, b) => (shortfallDb(b) < shortfallDb(a) ? b : a));
 }
 
 function overlapOf(contest: Contest, rival: Rival, linesWithin: readonly number[]): Choice['overlap'] {
