@@ -22,7 +22,7 @@ const HALF_WINDOW = 2 ** 0.25;
 /** Points a window has at the least: a line's main lobe, three to four of them, must stay a minority. */
 const FEWEST_POINTS = 15;
 /** The floor is worked out at steps of this ratio and read between them along a straight line in log-log. */
-const STEP = 2 ** (1 / 24);
+const STEP = 2 ** (1 / 12);
 /** A window is condensed to so many medians before a slope is fitted to it. */
 const BLOCKS = 31;
 /** Points looked at in a window; wider windows are thinned evenly, which costs a median next to nothing. */

@@ -1,4 +1,4 @@
-/** Fold of mean and variance about a straight line through consecutive samples, taken about the first so that a large offset costs no digits. */
+/** Fold of mean and variance about a straight line, with sums about the first sample so that a large offset costs no digits. */
 export class LineFit {
   count = 0;
   private origin = 0;
@@ -6,14 +6,21 @@ export class LineFit {
   private squares = 0;
   private moment = 0;
 
-  /** Takes the next sample. */
-  add(value: number): void {
-    if (this.count === 0) this.origin = value;
-    const y = value - this.origin;
-    this.sum += y;
-    this.squares += y * y;
-    this.moment += y * this.count;
-    this.count++;
+  /** Takes samples[from] … samples[to − 1]. */
+  add(samples: Float64Array, from: number, to: number): void {
+    if (this.count === 0 && to > from) this.origin = samples[from];
+    const { origin } = this;
+    let { count, sum, squares, moment } = this;
+    for (let i = from; i < to; i++) {
+      const y = samples[i] - origin;
+      sum += y;
+      squares += y * y;
+      moment += y * count++;
+    }
+    this.count = count;
+    this.sum = sum;
+    this.squares = squares;
+    this.moment = moment;
   }
 
   /** Mean of the samples. */
@@ -21,7 +28,7 @@ export class LineFit {
     return this.origin + this.sum / this.count;
   }
 
-  /** Unbiased variance about the straight line; 0 where fewer than three samples leave nothing to vary. */
+  /** Unbiased variance about the least-squares straight line; 0 where fewer than three samples leave nothing to vary. */
   variance(): number {
     const n = this.count;
     if (n < 3) return 0;

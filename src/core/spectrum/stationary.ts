@@ -57,9 +57,11 @@ export class ActivityFold {
   /** Takes the next samples; where `startsRun` is true they start a new run at `startSeconds`. */
   push(samples: Float64Array, startsRun: boolean, startSeconds: number): void {
     if (startsRun || this.run < 0) this.startRun(startSeconds);
-    for (let i = 0; i < samples.length; i++) {
-      this.line.add(samples[i]);
+    for (let from = 0; from < samples.length; ) {
+      const to = Math.min(samples.length, from + WINDOW_SAMPLES - this.line.count);
+      this.line.add(samples, from, to);
       if (this.line.count === WINDOW_SAMPLES) this.closeWindow();
+      from = to;
     }
   }
 
@@ -113,8 +115,14 @@ export class ActivityFold {
 
 function join(a: ActivityWindow, b: ActivityWindow): ActivityWindow {
   const samples = a.samples + b.samples;
-  const mean = (a.mean * a.samples + b.mean * b.samples) / samples;
-  return { ...a, samples, mean, variance: (a.variance * a.samples + b.variance * b.samples) / samples };
+  return {
+    run: a.run,
+    firstSample: a.firstSample,
+    samples,
+    startSeconds: a.startSeconds,
+    mean: (a.mean * a.samples + b.mean * b.samples) / samples,
+    variance: (a.variance * a.samples + b.variance * b.samples) / samples,
+  };
 }
 
 /** Cells into which a recording is cut: short enough to find a disturbance, long enough to average over beating lines. */

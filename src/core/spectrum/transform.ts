@@ -1,4 +1,5 @@
 import FFT from 'fft.js';
+import { hann } from './window.ts';
 
 /** Transform of two real sequences at once, with the scratch space it needs. */
 export interface PairTransform {
@@ -6,6 +7,8 @@ export interface PairTransform {
   readonly input: Float64Array;
   /** Interleaved complex output. */
   readonly output: Float64Array;
+  /** Hann window of that length. */
+  readonly window: Float64Array;
   run(): void;
 }
 
@@ -21,7 +24,7 @@ export function pairTransform(samples: number): PairTransform {
     const fft = new FFT(samples);
     const input = new Float64Array(2 * samples);
     const output = new Float64Array(2 * samples);
-    transform = { input, output, run: () => fft.transform(output, input) };
+    transform = { input, output, window: hann(samples), run: () => fft.transform(output, input) };
     byLength.set(samples, transform);
   }
   return transform;
@@ -32,12 +35,10 @@ export function pairTransform(samples: number): PairTransform {
  * With Z = A + iB: A[k] = (Z[k] + Z*[N−k])/2, B[k] = (Z[k] − Z*[N−k])/2i (Press et al., Numerical Recipes, §12.3).
  */
 export function addPowers({ output }: PairTransform, sumA: Float64Array, sumB: Float64Array): void {
-  const samples = output.length / 2;
+  const last = output.length;
   sumA[0] += output[0] * output[0];
   sumB[0] += output[1] * output[1];
-  for (let k = 1; k <= samples / 2; k++) {
-    const low = 2 * k;
-    const high = 2 * (samples - k);
+  for (let k = 1, low = 2, high = last - 2; low <= high; k++, low += 2, high -= 2) {
     const realSum = output[low] + output[high];
     const realDifference = output[low] - output[high];
     const imaginarySum = output[low + 1] + output[high + 1];

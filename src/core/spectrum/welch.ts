@@ -1,6 +1,6 @@
 import type { LevelSpectrum } from './spectrum.ts';
 import { addPowers, pairTransform } from './transform.ts';
-import { HANN, hann } from './window.ts';
+import { HANN } from './window.ts';
 
 /** What a Welch estimate is to be made of. */
 export interface WelchOptions {
@@ -53,7 +53,6 @@ class LevelFold {
   private readonly samples: number;
   private readonly hop: number;
   private readonly rateHz: number;
-  private readonly window: Float64Array;
   private readonly buffer: Float64Array;
   private readonly groupLimit: number;
   private readonly expectedSegments: number;
@@ -69,7 +68,6 @@ class LevelFold {
     this.samples = samples;
     this.hop = samples / 2;
     this.rateHz = options.rateHz;
-    this.window = hann(samples);
     this.buffer = new Float64Array(samples + this.hop);
     this.groupLimit = options.groups ?? 8;
     this.expectedSegments = Math.max(1, Math.floor(options.expectedSamples / this.hop) - 1);
@@ -94,7 +92,8 @@ class LevelFold {
   result(): LevelSpectrum[] {
     const { segments, samples } = this;
     if (segments === 0) return [];
-    const scale = 2 / (this.rateHz * this.window.reduce((sum, w) => sum + w * w, 0));
+    const { window } = pairTransform(samples);
+    const scale = 2 / (this.rateHz * window.reduce((sum, weight) => sum + weight * weight, 0));
     const total = new Float64Array(samples / 2 + 1);
     for (const { powers } of this.groups) for (let k = 0; k < total.length; k++) total[k] += powers[k];
     // Overlapping segments are correlated: K²/(K + 2ρ²·overlaps), twice (Welch 1967; Percival & Walden 1993, eq. 292b).
@@ -115,33 +114,36 @@ class LevelFold {
   }
 
   private transformTwo(): void {
-    const transform = pairTransform(this.samples);
-    this.load(transform.input, 0, 0);
-    this.load(transform.input, this.hop, 1);
+    const { samples, hop, buffer } = this;
+    const transform = pairTransform(samples);
+    const { input, window } = transform;
+    const shared = sumOf(buffer, hop, samples);
+    const firstMean = (sumOf(buffer, 0, hop) + shared) / samples;
+    const secondMean = (shared + sumOf(buffer, samples, samples + hop)) / samples;
+    for (let n = 0; n < samples; n++) {
+      input[2 * n] = (buffer[n] - firstMean) * window[n];
+      input[2 * n + 1] = (buffer[n + hop] - secondMean) * window[n];
+    }
     transform.run();
     const first = this.nextGroup();
     const second = this.nextGroup();
     addPowers(transform, first.powers, second.powers);
-    this.buffer.copyWithin(0, this.samples);
-    this.filled = this.hop;
+    buffer.copyWithin(0, samples);
+    this.filled = hop;
   }
 
   private transformOne(): void {
-    const transform = pairTransform(this.samples);
-    transform.input.fill(0);
-    this.load(transform.input, 0, 0);
+    const { samples, hop, buffer } = this;
+    const transform = pairTransform(samples);
+    const { input, window } = transform;
+    const mean = (sumOf(buffer, 0, hop) + sumOf(buffer, hop, samples)) / samples;
+    for (let n = 0; n < samples; n++) {
+      input[2 * n] = (buffer[n] - mean) * window[n];
+      input[2 * n + 1] = 0;
+    }
     transform.run();
     const { powers } = this.nextGroup();
     addPowers(transform, powers, powers);
-  }
-
-  /** Writes one segment, mean removed and windowed, into every second place of `input`. */
-  private load(input: Float64Array, from: number, place: 0 | 1): void {
-    const { samples, buffer, window } = this;
-    let sum = 0;
-    for (let n = 0; n < samples; n++) sum += buffer[from + n];
-    const mean = sum / samples;
-    for (let n = 0; n < samples; n++) input[2 * n + place] = (buffer[from + n] - mean) * window[n];
   }
 
   /** Counts a segment and gives the group it belongs to. */
@@ -159,6 +161,12 @@ class LevelFold {
     this.runHasSegments = true;
     return group;
   }
+}
+
+function sumOf(values: Float64Array, from: number, to: number): number {
+  let sum = 0;
+  for (let i = from; i < to; i++) sum += values[i];
+  return sum;
 }
 
 /** One-sided density: 0 Hz and Nyquist have no mirror image and count once. */

@@ -20,7 +20,9 @@ export const HANN = {
 export function hann(samples: number): Float64Array {
   if (!Number.isInteger(samples) || samples < 3)
     throw new RangeError(`A window needs 3 samples or more, not ${samples}`);
-  return Float64Array.from({ length: samples }, (_, n) => 0.5 - 0.5 * Math.cos((2 * Math.PI * n) / samples));
+  const weights = new Float64Array(samples);
+  for (let n = 0; n < samples; n++) weights[n] = 0.5 - 0.5 * Math.cos((2 * Math.PI * n) / samples);
+  return weights;
 }
 
 /**
