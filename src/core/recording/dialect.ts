@@ -134,16 +134,17 @@ function linesOf(text: string, delimiter: string, newline: Dialect['newline']): 
 /** Scores by the numbers in the lines of the commonest shape, weighted by their share of the fields. */
 function scored(lines: readonly Line[], delimiter: string, decimal: Dialect['decimal']): Candidate {
   const counts = lines.map(({ fields }) => fields.filter((field) => holdsNumber(field, decimal)).length);
+  const rows = lines.filter(({ fields }, i) => counts[i] > 0 && !isComment(fields[0]));
   const shapes = new Map<number, number>();
-  lines.forEach(({ fields }, i) => {
-    if (counts[i] > 0 && !isComment(fields[0])) shapes.set(width(fields), (shapes.get(width(fields)) ?? 0) + counts[i]);
-  });
-  const [fields, numbers] = [...shapes].reduce((a, b) => (b[1] > a[1] ? b : a), [0, 0]);
-  const shaped = lines.filter((line) => width(line.fields) === fields);
-  const tokens = shaped.reduce(
-    (sum, line) => sum + line.fields.slice(0, fields).filter((f) => f.trim() !== '').length,
+  for (const { fields } of rows) shapes.set(fields.length, (shapes.get(fields.length) ?? 0) + 1);
+  const shape = [...shapes].reduce((a, b) => (b[1] > a[1] ? b : a), [0, 0])[0];
+  const shaped = rows.filter(({ fields }) => fields.length === shape);
+  const fields = lines.some((line) => line.fields.length === shape && !endsEmpty(line.fields)) ? shape : shape - 1;
+  const numbers = shaped.reduce(
+    (sum, line) => sum + line.fields.filter((field) => holdsNumber(field, decimal)).length,
     0,
   );
+  const tokens = shaped.reduce((sum, line) => sum + line.fields.filter((field) => field.trim() !== '').length, 0);
   return {
     delimiter,
     decimal,
@@ -154,9 +155,13 @@ function scored(lines: readonly Line[], delimiter: string, decimal: Dialect['dec
   };
 }
 
-/** Fields of a line, an empty one behind a last delimiter not counted. */
-function width(fields: readonly string[]): number {
-  return fields.length > 1 && fields[fields.length - 1].trim() === '' ? fields.length - 1 : fields.length;
+function endsEmpty(fields: readonly string[]): boolean {
+  return fields.length > 1 && fields[fields.length - 1].trim() === '';
+}
+
+/** True where a line has as many fields as a row, an empty one behind the last delimiter not counted. */
+function fits(line: readonly string[], fields: number): boolean {
+  return line.length === fields || (line.length === fields + 1 && endsEmpty(line));
 }
 
 function numericFields(lines: readonly Line[], fields: number, decimal: Dialect['decimal']): Set<number> {
@@ -174,7 +179,7 @@ function holdsNumber(field: string, decimal: Dialect['decimal']): boolean {
 
 /** A data row has the commonest shape and nothing but numbers, or nothing, where most rows have numbers. */
 function isData({ fields }: Line, { fields: wanted, numeric, decimal }: Candidate): boolean {
-  if (width(fields) !== wanted || isComment(fields[0])) return false;
+  if (!fits(fields, wanted) || isComment(fields[0])) return false;
   const tokens = [...numeric].map((field) => fields[field]);
   return (
     tokens.some((token) => holdsNumber(token, decimal)) &&
@@ -198,10 +203,6 @@ function headerOf({ lines, fields }: Candidate, start: number): { header: Line |
   return nearest && next && isUnits(nearest.fields)
     ? { header: next, units: nearest }
     : { header: nearest, units: null };
-}
-
-function fits(names: readonly string[], fields: number): boolean {
-  return names.length === fields || width(names) === fields;
 }
 
 const UNIT =

@@ -72,15 +72,15 @@ export class NumberLane implements RowLane {
 
   next(): RowBatch | null {
     const { writer } = this;
-    if (writer.full) writer.batch.length = 0;
+    writer.begin();
     while (this.from < this.whole) {
       this.from = this.readLine(this.from);
       this.line++;
-      if (writer.full) return writer.batch;
+      if (writer.full) return writer.deliver();
     }
     if (!this.ended || writer.batch.length === 0) return null;
     this.ended = false;
-    return writer.batch;
+    return writer.deliver();
   }
 
   private endLine(): void {

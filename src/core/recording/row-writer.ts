@@ -17,6 +17,7 @@ export class RowWriter {
   private readonly layout: Layout;
   private readonly capacity: number;
   private faulty = false;
+  private delivered = false;
 
   constructor(layout: Layout, capacity: number) {
     this.layout = layout;
@@ -32,6 +33,18 @@ export class RowWriter {
 
   get full(): boolean {
     return this.batch.length === this.capacity;
+  }
+
+  /** Empties the batch where it was delivered: whoever took it may have shortened it. */
+  begin(): void {
+    if (this.delivered) this.batch.length = 0;
+    this.delivered = false;
+  }
+
+  /** The batch, as one that is not to be written to any more. */
+  deliver(): RowBatch {
+    this.delivered = true;
+    return this.batch;
   }
 
   /** Opens the next row, all of it missing; give every field, then `close`. */

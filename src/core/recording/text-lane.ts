@@ -64,19 +64,19 @@ export class TextLane implements RowLane {
   }
 
   next(): RowBatch | null {
-    const { batch } = this.writer;
-    if (this.writer.full) batch.length = 0;
+    const { writer } = this;
+    writer.begin();
     for (;;) {
       while (this.nextRecord < this.records.length) {
         this.row(this.records[this.nextRecord++]);
-        if (this.writer.full) return batch;
+        if (writer.full) return writer.deliver();
       }
       if (this.cut === 0) break;
       this.split();
     }
-    if (!this.ended || batch.length === 0) return null;
+    if (!this.ended || writer.batch.length === 0) return null;
     this.ended = false;
-    return batch;
+    return writer.deliver();
   }
 
   private take(text: string): void {
