@@ -73,8 +73,10 @@ class PeakSearch {
   private readonly density: Float64Array;
   private readonly binHz: number;
   private readonly dof: number;
-  /** Floor by bin; the side lobes of the peaks found so far are added to it. */
+  /** Floor by bin; the side lobes of the lines found so far are added to it. */
   private readonly floor: Float64Array;
+  /** What those side lobes reach at the most, with a margin. */
+  private readonly sideLobes: Float64Array;
   private readonly floorDof: Float64Array;
   /** 0 free, 1 belongs to a line, 2 belongs to a resonance. */
   private readonly taken: Uint8Array;
@@ -89,6 +91,7 @@ class PeakSearch {
     const { density, degreesOfFreedom } = floorOfBins(level);
     this.floor = density;
     this.floorDof = degreesOfFreedom;
+    this.sideLobes = new Float64Array(this.density.length);
     this.taken = new Uint8Array(this.density.length);
     this.endBin = this.density.length - 2;
     this.chance = (options.falseAlarms ?? 1e-3) / Math.max(1, this.endBin - FIRST_BIN);
@@ -117,7 +120,9 @@ class PeakSearch {
   }
 
   private exceedsFloor(bin: number): boolean {
-    return this.density[bin] > fQuantile(1 - this.chance, this.dof, this.floorDof[bin]) * this.floor[bin];
+    const { density, floor, floorDof, sideLobes } = this;
+    if (density[bin] < sideLobes[bin] + floor[bin]) return false;
+    return density[bin] > fQuantile(1 - this.chance, this.dof, floorDof[bin]) * floor[bin];
   }
 
   /** True where the peak is as narrow as a main lobe and rises out of both sides, as a spike on a resonance does not. */
@@ -236,9 +241,10 @@ class PeakSearch {
       for (let d = LOBE + 1; ; d++) {
         const k = Math.round(position) + side * d;
         if (k < 0 || k >= this.floor.length) break;
-        const leak = SIDE_LOBE_MARGIN * peak * hannSideLobes(k - position);
-        if (leak < 0.01 * this.floor[k]) break;
-        this.floor[k] += leak;
+        const crest = SIDE_LOBE_MARGIN * peak * hannSideLobes(k - position);
+        if (crest < 0.01 * this.floor[k]) break;
+        this.sideLobes[k] += crest;
+        this.floor[k] += peak * hannLobe(k - position);
       }
     }
   }
