@@ -1,0 +1,101 @@
+import type { ChartConfiguration, ChartDataset, ChartOptions, Plugin } from 'chart.js';
+import { FONT_FAMILY, TEXT_PX } from './axis.ts';
+import type { Point } from './chart-spec.ts';
+import type { Colours } from './colours.ts';
+
+/** Legends name only curves with a label. */
+const NAMELESS = '';
+
+/** A chart of curves over common axes, still and without points, as every picture of the report is. */
+export function curves(
+  colours: Colours,
+  datasets: ChartDataset<'line', Point[]>[],
+  scales: NonNullable<ChartOptions<'line'>['scales']>,
+  plugins: Plugin<'line'>[] = [],
+): ChartConfiguration<'line'> {
+  return {
+    type: 'line',
+    data: { datasets: datasets as ChartDataset<'line'>[] },
+    options: {
+      responsive: false,
+      animation: false,
+      parsing: false,
+      normalized: true,
+      layout: { padding: { top: 4, right: 12, bottom: 4, left: 4 } },
+      font: { family: FONT_FAMILY, size: TEXT_PX },
+      scales,
+      plugins: {
+        legend: {
+          position: 'top',
+          align: 'start',
+          labels: {
+            color: colours.ink,
+            font: { size: TEXT_PX, family: FONT_FAMILY },
+            boxHeight: 1,
+            boxWidth: 28,
+            filter: (item) => item.text !== NAMELESS,
+          },
+        },
+        tooltip: { enabled: false },
+      },
+    },
+    plugins: [background(colours), ...plugins],
+  };
+}
+
+/** One curve. `dash` and `width` tell it apart where colour cannot. */
+export function curve(options: {
+  readonly label: string;
+  readonly points: Point[];
+  readonly colour: string;
+  readonly width: number;
+  readonly dash?: number[];
+  readonly axis?: string;
+  readonly fill?: ChartDataset<'line'>['fill'];
+  readonly order?: number;
+}): ChartDataset<'line', Point[]> {
+  return {
+    label: options.label,
+    data: options.points,
+    borderColor: options.colour,
+    backgroundColor: options.colour,
+    borderWidth: options.width,
+    borderDash: options.dash ?? [],
+    pointRadius: 0,
+    tension: 0,
+    spanGaps: false,
+    yAxisID: options.axis ?? 'y',
+    fill: options.fill ?? false,
+    order: options.order ?? 0,
+  };
+}
+
+/** Envelope of a thinned trace: its upper edge carries the label, its lower edge fills up to it. */
+export function envelope(options: {
+  readonly label: string;
+  readonly seconds: Float64Array;
+  readonly low: Float64Array;
+  readonly high: Float64Array;
+  readonly colour: string;
+  readonly order: number;
+}): ChartDataset<'line', Point[]>[] {
+  const { label, colour, order, seconds } = options;
+  const points = (values: Float64Array) => Array.from(values, (y, i) => ({ x: seconds[i], y }));
+  return [
+    curve({ label, points: points(options.high), colour, width: 1, order }),
+    curve({ label: NAMELESS, points: points(options.low), colour, width: 1, order, fill: '-1' }),
+  ];
+}
+
+/** Paints the paper; the drawing library's own option breaks a second size in one bundle. */
+function background(colours: Colours): Plugin<'line'> {
+  return {
+    id: 'paper',
+    beforeDraw({ ctx, width, height }) {
+      ctx.save();
+      ctx.fillStyle = colours.paper;
+      ctx.fillRect(0, 0, width, height);
+      ctx.restore();
+    },
+  };
+}

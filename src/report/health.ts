@@ -1,0 +1,60 @@
+import { count, hertz, percent, seconds } from '../core/figure.ts';
+import type { RecordingFacts } from '../core/recording/recording.ts';
+import { understood } from '../core/recording/understood.ts';
+import type { ChannelStudy, Study } from '../core/study-result.ts';
+import { html, type Markup } from './markup.ts';
+
+/** What was understood of both files, what is odd about them, and which part of the quiet one was used. */
+export function healthSection(study: Study): Markup {
+  return html`<section aria-labelledby="health">
+<h2 id="health">Health of the recordings</h2>
+${recording('Quiet', study.quiet)}
+${recording('Active', study.active)}
+<h3>The pair</h3>
+<ul>
+${[...study.notes, ...study.channels.flatMap((channel) => channel.notes)].map((note) => html`<li>${note.severity === 'warning' ? html`<strong>Warning:</strong> ` : ''}${note.text}</li>\n`)}
+${study.channels.map(quietPart)}
+</ul>
+</section>`;
+}
+
+function recording(role: string, facts: RecordingFacts): Markup {
+  const { jitterSeconds, rateHz, gaps } = facts;
+  const jitter =
+    jitterSeconds > 0
+      ? `Jitter of the stamps ${seconds(jitterSeconds)} (${percent(jitterSeconds * rateHz)} of a period)${facts.resampled ? '; samples were interpolated onto an even grid' : ''}.`
+      : 'The stamps show no jitter.';
+  return html`<h3>${role}: ${facts.file}</h3>
+<ul>
+<li>${understood(facts)}.</li>
+<li>${jitter}</li>
+${gaps.slice(0, 10).map((gap) => html`<li>Gap of ${seconds(gap.lengthSeconds)} at ${seconds(gap.atSeconds)}, before line ${count(gap.row)} of the file.</li>\n`)}
+${gaps.length > 10 && html`<li>${count(gaps.length - 10)} more gaps.</li>`}
+${facts.leftOut.map((column) => html`<li>Column ${column.column}, “${column.name}”, left out: ${column.why}.</li>\n`)}
+${facts.notes.map((note) => html`<li>${note.severity === 'warning' ? html`<strong>Warning:</strong> ` : ''}${note.text}</li>\n`)}
+</ul>
+`;
+}
+
+function quietPart({ channel, quietPart: part, noiseGain }: ChannelStudy): Markup {
+  const { usedSeconds, totalSeconds } = part;
+  return html`<li>${channel.name}: ${seconds(usedSeconds)} of ${seconds(totalSeconds)} of the quiet recording carry the noise figures; noise in use is ${percent(noiseGain, 3)} of the quiet one.</li>
+`;
+}
+
+/** What must be said with every filter, whatever the figures. */
+export function cautionsSection(study: Study): Markup {
+  const rateHz = Math.min(study.quiet.rateHz, study.active.rateHz);
+  const slowest = study.channels.reduce((a, b) => (b.advice.delaySeconds > a.advice.delaySeconds ? b : a));
+  return html`<section aria-labelledby="cautions">
+<h2 id="cautions">Cautions</h2>
+<ul>
+<li><strong>Delay.</strong> Every filter here is late: up to ${seconds(slowest.advice.delaySeconds)} (${slowest.channel.name}). In a control or protection loop that delay costs stability and reaction time; have it checked by whoever answers for the loop.</li>
+<li><strong>Alarms.</strong> A filter can hide what an alarm is meant to see: short shocks, the start of a fault, a failing sensor. Take alarms from the unfiltered signal unless the filter has been approved for them.</li>
+<li><strong>Folding.</strong> A digital filter cannot undo what the converter has folded down. Anything above ${hertz(rateHz / 2, 3)} at the sensor appears below it in these recordings; where that cannot be ruled out, an analog filter must stand before the converter.</li>
+<li><strong>Other conditions.</strong> The advice holds for the machine, mounting and speed that were recorded. Record again after a change of any of them.</li>
+<li><strong>Mains-connected and medical equipment.</strong> Follow the local codes and the equipment's standards; isolation and leakage limits come before noise.</li>
+<li><strong>Safety functions.</strong> Where a wrong reading can hurt someone, have a licensed or otherwise qualified person review and sign this before it is built.</li>
+</ul>
+</section>`;
+}

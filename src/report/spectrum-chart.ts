@@ -1,0 +1,178 @@
+import type { Plugin } from 'chart.js';
+import { decibels, hertz, quantity } from '../core/figure.ts';
+import { gainDb } from '../core/filter/response.ts';
+import type { Spectrum } from '../core/spectrum/spectrum.ts';
+import type { ChannelStudy } from '../core/study-result.ts';
+import { FONT_FAMILY, linearAxis, logarithmicAxis, TEXT_PX } from './axis.ts';
+import { curve, curves } from './chart-base.ts';
+import type { ChartSpec, Point } from './chart-spec.ts';
+import { COLOURS, type Colours, type Theme } from './colours.ts';
+
+/** Lowest gain drawn, dB. */
+const LOWEST_GAIN_DB = -100;
+/** Strongest lines that get a label; all get a tick. */
+const LABELLED_LINES = 6;
+
+/** Spectra of both recordings and behind the filter, with keep band, noise lines, corner and the filter's gain over them. */
+export function spectrumChart(study: ChannelStudy, id: string, theme: Theme): ChartSpec {
+  const colours = COLOURS[theme];
+  const { channel, quietSpectrum, activeSpectrum, filteredSpectrum, advice } = study;
+  const minHz = Math.min(quietSpectrum.frequencyHz[0], activeSpectrum.frequencyHz[0]);
+  const maxHz = Math.max(quietSpectrum.rateHz, activeSpectrum.rateHz) / 2;
+  const range = amplitudeRange(study);
+  const unit = channel.unit === '' ? '' : `, ${channel.unit}/√Hz`;
+  return {
+    id,
+    title: `${channel.name}: spectra, and the filter's gain over them`,
+    description: describe(study),
+    widthPx: 1120,
+    heightPx: 440,
+    config: curves(
+      colours,
+      [
+        curve({
+          label: 'active',
+          points: points(activeSpectrum, range.min),
+          colour: colours.before,
+          width: 2,
+          order: 4,
+        }),
+        curve({
+          label: 'quiet',
+          points: points(quietSpectrum, range.min),
+          colour: colours.quiet,
+          width: 1.5,
+          order: 3,
+        }),
+        curve({
+          label: 'noise floor',
+          points: floorPoints(study, range.min),
+          colour: colours.floor,
+          width: 1.5,
+          dash: [2, 3],
+          order: 2,
+        }),
+        curve({
+          label: 'active, filtered',
+          points: points(filteredSpectrum, range.min),
+          colour: colours.after,
+          width: 2.5,
+          order: 1,
+        }),
+        curve({
+          label: 'gain (right)',
+          points: gainPoints(study, minHz, maxHz),
+          colour: colours.gain,
+          width: 1.5,
+          dash: [9, 5],
+          axis: 'gain',
+          order: 0,
+        }),
+      ],
+      {
+        x: logarithmicAxis(colours, 'bottom', 'frequency, Hz', { min: minHz, max: maxHz }),
+        y: logarithmicAxis(colours, 'left', `amplitude density${unit}`, range),
+        gain: linearAxis(colours, 'right', 'gain, dB', { min: LOWEST_GAIN_DB, max: 10, grid: false }),
+      },
+      [marks(study, colours, `corner ${hertz(advice.cornerHz)}`)],
+    ),
+  };
+}
+
+function describe({ channel, lines, keep, advice }: ChannelStudy): string {
+  const named = lines.map((line) => `${hertz(line.frequencyHz, 3)} at ${quantity(line.amplitude, channel.unit)}`);
+  const kept =
+    keep.highHz > 0 ? `Keep band ${hertz(keep.lowHz)} to ${hertz(keep.highHz, 3)}` : 'No keep band was found';
+  const rejected = advice.rejectionDb === null ? '' : `, rejection ${decibels(advice.rejectionDb)} at the first line`;
+  return `Amplitude densities of quiet, active and filtered recording of ${channel.name} over frequency. ${kept}. Noise lines: ${named.length > 0 ? named.join('; ') : 'none'}. Corner ${hertz(advice.cornerHz)}: droop ${decibels(advice.droopDb)}${rejected}.`;
+}
+
+function points(spectrum: Spectrum, floor: number): Point[] {
+  return Array.from(spectrum.frequencyHz, (x, i) => ({ x, y: Math.max(floor, Math.sqrt(spectrum.density[i])) }));
+}
+
+function floorPoints({ quietSpectrum, floorDensity }: ChannelStudy, floor: number): Point[] {
+  return Array.from(quietSpectrum.frequencyHz, (x, i) => ({ x, y: Math.max(floor, Math.sqrt(floorDensity[i])) }));
+}
+
+function gainPoints({ advice }: ChannelStudy, minHz: number, maxHz: number): Point[] {
+  const count = 240;
+  return Array.from({ length: count }, (_, i) => {
+    const x = minHz * (maxHz / minHz) ** (i / (count - 1));
+    const y = gainDb(advice, x);
+    return { x, y: y < LOWEST_GAIN_DB ? Number.NaN : y };
+  });
+}
+
+/** Whole decades that hold both recordings, and of the filtered one as much as lies within two decades below. */
+function amplitudeRange({ quietSpectrum, activeSpectrum }: ChannelStudy): { min: number; max: number } {
+  const all = [...quietSpectrum.density, ...activeSpectrum.density].filter((density) => density > 0);
+  const lowest = all.reduce((a, b) => Math.min(a, b), Number.POSITIVE_INFINITY);
+  const highest = all.reduce((a, b) => Math.max(a, b), 0);
+  return {
+    min: 10 ** Math.floor(Math.log10(Math.sqrt(lowest)) - 1),
+    max: 10 ** Math.ceil(Math.log10(Math.sqrt(highest))),
+  };
+}
+
+/** Shades the keep band, marks the corner, and labels the noise lines along the upper edge. */
+function marks(study: ChannelStudy, colours: Colours, cornerLabel: string): Plugin<'line'> {
+  const { keep, lines, advice } = study;
+  const strongest = [...lines].sort((a, b) => b.amplitude - a.amplitude).slice(0, LABELLED_LINES);
+  return {
+    id: 'marks',
+    beforeDatasetsDraw({ ctx, chartArea, scales }) {
+      const { x } = scales;
+      if (x === undefined || keep.highHz <= 0) return;
+      const left = keep.lowHz > 0 ? x.getPixelForValue(keep.lowHz) : chartArea.left;
+      ctx.save();
+      ctx.fillStyle = colours.keep;
+      ctx.fillRect(left, chartArea.top, x.getPixelForValue(keep.highHz) - left, chartArea.height);
+      ctx.fillStyle = colours.ink;
+      ctx.font = `${TEXT_PX}px '${FONT_FAMILY}'`;
+      ctx.fillText(`keep band to ${hertz(keep.highHz, 3)}`, left + 8, chartArea.bottom - 10);
+      ctx.restore();
+    },
+    afterDatasetsDraw({ ctx, chartArea, scales }) {
+      const { x } = scales;
+      if (x === undefined) return;
+      ctx.save();
+      ctx.font = `${TEXT_PX}px '${FONT_FAMILY}'`;
+      ctx.textAlign = 'center';
+      let taken = Number.NEGATIVE_INFINITY;
+      let row = 0;
+      for (const line of [...lines].sort((a, b) => a.frequencyHz - b.frequencyHz)) {
+        const at = x.getPixelForValue(line.frequencyHz);
+        ctx.fillStyle = colours.mark;
+        triangle(ctx, at, chartArea.top + 2);
+        if (!strongest.includes(line)) continue;
+        const label = hertz(line.frequencyHz, 3);
+        row = at - taken < ctx.measureText(label).width + 10 ? (row + 1) % 3 : 0;
+        taken = at;
+        ctx.fillStyle = colours.ink;
+        ctx.fillText(label, at, chartArea.top + 26 + 17 * row);
+      }
+      const corner = x.getPixelForValue(advice.cornerHz);
+      ctx.strokeStyle = colours.ink;
+      ctx.lineWidth = 1;
+      ctx.setLineDash([1, 3]);
+      ctx.beginPath();
+      ctx.moveTo(corner, chartArea.top);
+      ctx.lineTo(corner, chartArea.bottom);
+      ctx.stroke();
+      ctx.textAlign = 'left';
+      ctx.fillStyle = colours.ink;
+      ctx.fillText(cornerLabel, corner + 6, chartArea.bottom - 28);
+      ctx.restore();
+    },
+  };
+}
+
+function triangle(ctx: CanvasRenderingContext2D, x: number, top: number): void {
+  ctx.beginPath();
+  ctx.moveTo(x - 5, top);
+  ctx.lineTo(x + 5, top);
+  ctx.lineTo(x, top + 8);
+  ctx.closePath();
+  ctx.fill();
+}

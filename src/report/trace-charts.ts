@@ -1,0 +1,78 @@
+import { hertz, percent, quantity, seconds } from '../core/figure.ts';
+import type { ChannelStudy, Inset, ThinnedTrace } from '../core/study-result.ts';
+import { linearAxis } from './axis.ts';
+import { curve, curves, envelope } from './chart-base.ts';
+import type { ChartSpec } from './chart-spec.ts';
+import { COLOURS, type Theme } from './colours.ts';
+
+/** The whole active recording before and behind the filter, every peak kept. */
+export function overviewChart(study: ChannelStudy, id: string, theme: Theme): ChartSpec {
+  const colours = COLOURS[theme];
+  const { before, after } = study.simulation;
+  const { name, unit } = study.channel;
+  const end = before.seconds[before.seconds.length - 1];
+  return {
+    id,
+    title: `${name}: the active recording, before and after`,
+    description: `The active recording of ${name} over ${seconds(end)}. Before the filter it ranges from ${range(before, unit)}; after it from ${range(after, unit)}.`,
+    widthPx: 1120,
+    heightPx: 300,
+    config: curves(
+      colours,
+      [
+        ...envelope({ label: 'before (smallest to largest)', ...before, colour: colours.before, order: 2 }),
+        ...envelope({ label: 'after', ...after, colour: colours.after, order: 1 }),
+      ],
+      {
+        x: linearAxis(colours, 'bottom', 'time from the first sample, s', { min: 0, max: end }),
+        y: linearAxis(colours, 'left', axisTitle(name, unit)),
+      },
+    ),
+  };
+}
+
+/** A few seconds at full resolution. */
+export function insetChart(study: ChannelStudy, inset: Inset, id: string, theme: Theme): ChartSpec {
+  const colours = COLOURS[theme];
+  const { name, unit } = study.channel;
+  const from = inset.seconds[0];
+  const to = inset.seconds[inset.seconds.length - 1];
+  const points = (values: Float64Array) => Array.from(values, (y, i) => ({ x: inset.seconds[i], y }));
+  const left = spread(inset.after) / spread(inset.before);
+  return {
+    id,
+    title: `${name}: ${inset.title.toLowerCase()}`,
+    description: `${inset.title} of ${name}, ${seconds(from)} to ${seconds(to)}, every sample before and after the filter; peak to peak ${quantity(spread(inset.before), unit)} before, ${quantity(spread(inset.after), unit)} after (${percent(left)}). The delay of ${seconds(study.advice.delaySeconds)} is visible; corner ${hertz(study.advice.cornerHz)}.`,
+    widthPx: 552,
+    heightPx: 270,
+    config: curves(
+      colours,
+      [
+        curve({ label: 'before', points: points(inset.before), colour: colours.before, width: 1, order: 2 }),
+        curve({ label: 'after', points: points(inset.after), colour: colours.after, width: 2.5, order: 1 }),
+      ],
+      {
+        x: linearAxis(colours, 'bottom', 'time, s', { min: from, max: to }),
+        y: linearAxis(colours, 'left', axisTitle(name, unit)),
+      },
+    ),
+  };
+}
+
+function axisTitle(name: string, unit: string): string {
+  return unit === '' ? name : `${name}, ${unit}`;
+}
+
+function range({ low, high }: ThinnedTrace, unit: string): string {
+  const known = (values: Float64Array) => values.filter((value) => !Number.isNaN(value));
+  const smallest = known(low).reduce((a, b) => Math.min(a, b), Number.POSITIVE_INFINITY);
+  const largest = known(high).reduce((a, b) => Math.max(a, b), Number.NEGATIVE_INFINITY);
+  return `${quantity(smallest, unit)} to ${quantity(largest, unit)}`;
+}
+
+function spread(values: Float64Array): number {
+  return (
+    values.reduce((a, b) => Math.max(a, b), Number.NEGATIVE_INFINITY) -
+    values.reduce((a, b) => Math.min(a, b), Number.POSITIVE_INFINITY)
+  );
+}
