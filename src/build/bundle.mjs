@@ -31,9 +31,9 @@ const { outputFiles, metafile } = await build({
   platform: 'node',
   target: 'node20',
   external: ['@napi-rs/canvas', '@fontsource/dejavu-sans'],
-  // CommonJS packages inside an ES module still ask for Node's modules by `require`.
+  // CommonJS packages inside an ES module still use what Node gives to CommonJS only.
   banner: {
-    js: "import { createRequire as requireFrom } from 'node:module'; const require = requireFrom(import.meta.url);",
+    js: "import { createRequire as requireFrom } from 'node:module'; const require = requireFrom(import.meta.url); const __filename = import.meta.url;",
   },
   // One copy of Chart.js for the renderer (CommonJS) and for plugins (ES modules): they must register in the same one.
   alias: {
@@ -70,16 +70,16 @@ async function replace(path, text) {
   await rename(part, path);
 }
 
-/** Licence texts of the packages that the bundle carries inside it. */
+/** Licence texts of the packages that the bundle carries inside it, each text once. */
 async function licences(inputs) {
   const folders = new Set(inputs.map((path) => path.match(/^.*node_modules\/(?:@[^/]+\/)?[^/]+/)?.[0]).filter(Boolean));
-  const texts = await Promise.all(
-    [...folders].sort().map(async (folder) => {
-      const { name, version, license } = JSON.parse(await readFile(join(root, folder, 'package.json'), 'utf8'));
-      const file = (await readdir(join(root, folder))).find((entry) => /^licen[cs]e/i.test(entry));
-      const text = file ? await readFile(join(root, folder, file), 'utf8') : `Licence: ${license}`;
-      return `${name} ${version}\n\n${text.trim()}\n`;
-    }),
-  );
-  return `dist/ carries these packages inside it.\n\n${texts.join(`\n${'-'.repeat(80)}\n\n`)}`;
+  const carriers = new Map();
+  for (const folder of [...folders].sort()) {
+    const { name, version, license } = JSON.parse(await readFile(join(root, folder, 'package.json'), 'utf8'));
+    const file = (await readdir(join(root, folder))).find((entry) => /^licen[cs]e/i.test(entry));
+    const text = file ? (await readFile(join(root, folder, file), 'utf8')).trim() : `Licence: ${license}`;
+    carriers.set(text, [...(carriers.get(text) ?? []), `${name} ${version}`]);
+  }
+  const parts = [...carriers].map(([text, names]) => `${names.join('\n')}\n\n${text}\n`);
+  return `dist/ carries these packages inside it.\n\n${parts.join(`\n${'-'.repeat(80)}\n\n`)}`;
 }
