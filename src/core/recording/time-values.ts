@@ -80,14 +80,14 @@ export function findTime(file: string, head: Head, columns: readonly Column[], r
 function timeStamps(head: Head, columns: readonly Column[]) {
   const all = columns.map((column) => stampsOf(head, column)).filter((stamps) => stamps !== null);
   const numbers = all.filter(({ form }) => form === 'number');
-  const dates = all.filter(({ form }) => form === 'iso8601');
-  const clocks = all.filter(({ form }) => form === 'clock');
+  const dates = all.filter(({ form, rising }) => form === 'iso8601' && rising);
+  const written = all.filter(({ form }) => form !== 'number');
   const named = numbers.filter(({ column, rising }) => isTimeName(column) || (rising && TIME_WORD.test(column.name)));
   const counters = numbers.filter(({ column, rising, integer }) => rising && integer && COUNTER.test(column.name));
   const first = numbers.find(({ column }) => column.field === 0);
   const nameless = first && (head.names[0] ?? '') === '' && first.rising && first.even ? [first] : [];
   const counting = nameless.filter(({ integer, step }) => integer && step === 1);
-  const times = [...named.filter(({ column }) => unitOf(column) !== null), ...dates, ...named, ...clocks];
+  const times = [...named.filter(({ column }) => unitOf(column) !== null), ...dates, ...named, ...written];
   const time = times[0] ?? (counters.length + counting.length > 0 ? undefined : nameless[0]);
   const counter = counters[0] ?? counting[0];
   const found = time ? { stamps: time, kind: 'time' } : counter ? { stamps: counter, kind: 'counter' } : null;
@@ -141,7 +141,8 @@ function timed(stamps: Stamps, others: readonly number[]): TimeColumn {
   const epoch = (['s', 'ms', 'us', 'ns'] as const).find((unit) => isEpoch(stamps, unit));
   const unit = written ?? epoch ?? unitBySteps(stamps);
   const kind = isEpoch(stamps, unit) ? 'epoch' : unit;
-  const guess = written || epoch ? null : `its steps of ${Number(stamps.step.toPrecision(4))}`;
+  const clear = written !== null || epoch !== undefined || (!stamps.integer && stamps.step < 1);
+  const guess = clear ? null : `its steps of ${Number(stamps.step.toPrecision(4))}`;
   return { ...known, kind, unitsPerSecond: PER_SECOND[unit], guess };
 }
 

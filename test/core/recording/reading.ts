@@ -42,5 +42,5 @@ export function lines(count: number, row: (i: number) => string, newline = '\n')
 
 /** A signal without a constant stretch, to four decimals. */
 export function wave(i: number): number {
-  return Number((Math.sin(i / 3) + Math.cos(i * 7.1)).toFixed(4));
+  return Number((Math.sin(i / 3) + Math.cos(i * 7.1)).toFixed(4)) + 0;
 }
