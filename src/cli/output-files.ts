@@ -2,7 +2,6 @@ import { once } from 'node:events';
 import { createWriteStream, type WriteStream } from 'node:fs';
 import { access, constants, mkdir, rename, rm } from 'node:fs/promises';
 import { basename, dirname, join } from 'node:path';
-import writeFileAtomic from 'write-file-atomic';
 import { UserError } from '../core/user-error.ts';
 
 /** Makes sure that a folder is there and can be written to, before any work is done; throws UserError('output'). */
@@ -17,10 +16,13 @@ export async function prepareFolder(folder: string): Promise<void> {
 
 /** Writes a whole file beside its target and renames it into place; throws UserError('output'). */
 export async function writeWhole(path: string, content: string): Promise<void> {
+  const file = new GrowingFile(path);
   try {
-    await writeFileAtomic(path, content, 'utf8');
+    await file.write(content);
+    await file.keep();
   } catch (error) {
-    throw cannotWrite(path, error);
+    await file.drop();
+    throw error;
   }
 }
 
@@ -52,7 +54,11 @@ export class GrowingFile {
       await this.drop();
       throw cannotWrite(this.path, this.failure);
     }
-    await rename(this.partPath, this.path);
+    try {
+      await rename(this.partPath, this.path);
+    } catch (error) {
+      throw cannotWrite(this.path, error);
+    }
   }
 
   async drop(): Promise<void> {
