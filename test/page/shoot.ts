@@ -1,12 +1,15 @@
 /**
  * Takes pictures of a page, to be looked at: npx tsx test/page/shoot.ts FILE.html FOLDER
- * writes FOLDER/{1280,390}-{light,dark}.png (whole page) and FOLDER/print.pdf.
+ * writes the whole page from the top down as FOLDER/{1280,390}-{light,dark}-{1,2,...}.png, and FOLDER/print.pdf.
  */
 import { mkdir } from 'node:fs/promises';
 import { join, resolve } from 'node:path';
 import { setTimeout as wait } from 'node:timers/promises';
 import { findBrowser, launch } from './browser.ts';
 import { openFile, VIEWS } from './views.ts';
+
+/** Height of one picture, pixels: a taller one cannot be read when it is shown whole. */
+const PIECE = 1400;
 
 const [file, folder] = process.argv.slice(2);
 if (!file || !folder) throw new Error('usage: npx tsx test/page/shoot.ts FILE.html FOLDER');
@@ -19,9 +22,14 @@ for (const view of VIEWS) {
   const { page, requests, complaints } = await openFile(browser, resolve(file), view);
   // Charts have drawn themselves by then.
   await wait(500);
-  const path = join(folder, `${view.width}-${view.scheme}.png`);
-  await page.screenshot({ path, fullPage: true });
-  process.stdout.write(`${[path, ...requests, ...complaints].join('\n  ')}\n`);
+  const pageHeight = await page.evaluate(() => document.documentElement.scrollHeight);
+  for (let top = 0; top < pageHeight; top += PIECE) {
+    const path = join(folder, `${view.width}-${view.scheme}-${top / PIECE + 1}.png`);
+    const clip = { x: 0, y: top, width: view.width, height: Math.min(PIECE, pageHeight - top) };
+    await page.screenshot({ path, fullPage: true, clip });
+    process.stdout.write(`${path}\n`);
+  }
+  for (const fault of [...requests, ...complaints]) process.stdout.write(`  ${fault}\n`);
 }
 const { page } = await openFile(browser, resolve(file), VIEWS[0]);
 await wait(500);
