@@ -51,47 +51,70 @@ export function refuseUnreadable(
 
 /** Every repair and oddity in one sentence each, with its count and first place. */
 export function notes(findings: Findings): Note[] {
-  return [...timeNotes(findings), ...stampNotes(findings), ...valueNotes(findings)];
+  return [
+    ...unitNotes(findings),
+    ...gapNotes(findings),
+    ...evennessNotes(findings),
+    ...stampNotes(findings),
+    ...valueNotes(findings),
+  ];
 }
 
-function timeNotes({ survey, time, tooShort }: Findings): Note[] {
-  const { reading } = survey;
-  const { longest, gaps, rateHz, uneven } = time;
+function unitNotes({ survey, time }: Findings): Note[] {
+  const { guess, name, kind } = survey.reading.time;
+  if (guess === null) return [];
+  const text = `The time column "${name}" has no unit; by ${guess} it is taken for ${kind}, which makes ${hertz(time.rateHz, 4)}; write the unit into the header, or give --rate, where that is wrong.`;
+  return [warning(text)];
+}
+
+function gapNotes({ time: { gaps }, tooShort }: Findings): Note[] {
   const found: Note[] = [];
-  if (reading.time.guess !== null)
-    found.push(
-      warning(
-        `The time column "${reading.time.name}" has no unit; by ${reading.time.guess} it is taken for ${reading.time.kind}, which makes ${hertz(rateHz, 4)}; write the unit into the header, or give --rate, where that is wrong.`,
-      ),
-    );
   if (gaps.length > 0) {
     const [{ row, atSeconds, lengthSeconds }] = gaps;
+    const first = `${seconds(lengthSeconds)} before row ${row}, at ${seconds(atSeconds)}`;
+    const one = gaps.length === 1;
     found.push(
       warning(
-        `${plural(gaps.length, 'gap')} in time, the first of ${seconds(lengthSeconds)} before row ${row}, at ${seconds(atSeconds)}; nothing is computed across ${gaps.length > 1 ? 'them' : 'it'}.`,
+        `${plural(gaps.length, 'gap')} in time${one ? '' : ', the first'} of ${first}; nothing is computed across ${one ? 'it' : 'them'}.`,
       ),
     );
   }
-  if (uneven)
-    found.push(
-      warning(
-        `The stamps are uneven by ${seconds(longest.jitterSeconds)} (${percent(longest.jitterSeconds * rateHz)} of a period); the samples are interpolated onto an even ${hertz(rateHz, 4)}, which costs up to ${loss(0.1)} at ${hertz(rateHz / 10)} and ${loss(0.25)} at ${hertz(rateHz / 4)}.`,
-      ),
-    );
-  else if (longest.jitterSeconds * rateHz > 1 && !survey.rule.coarse)
-    found.push(
-      note(
-        `The clock wanders by ${seconds(longest.jitterSeconds)} about a straight line while its steps stay even; the samples are taken as even.`,
-      ),
-    );
-  if (survey.rule.coarse)
-    found.push(
-      note(
-        `The stamps are coarser (${seconds(survey.rule.resolutionSeconds)}) than the sample period; the samples are spread along a straight line through them.`,
-      ),
-    );
   if (tooShort > 0) found.push(note(`${plural(tooShort, 'run')} of a single sample between gaps left out.`));
   return found;
+}
+
+function evennessNotes({ survey: { rule }, time }: Findings): Note[] {
+  const { longest, rateHz, uneven, otherRate } = time;
+  const jitter = seconds(longest.jitterSeconds);
+  if (otherRate)
+    return [
+      warning(
+        `The rate changes from ${hertz(rateHz, 4)} to ${hertz(1 / otherRate.periodSeconds, 4)} in the run at ${seconds(otherRate.firstSeconds)}; ${cost(rateHz)}.`,
+      ),
+    ];
+  if (uneven)
+    return [
+      warning(
+        `The stamps are uneven by ${jitter} (${percent(longest.jitterSeconds * rateHz)} of a period); ${cost(rateHz)}.`,
+      ),
+    ];
+  if (rule.coarse)
+    return [
+      note(
+        `The stamps are coarser (${seconds(rule.resolutionSeconds)}) than the sample period; the samples are spread along a straight line through them.`,
+      ),
+    ];
+  if (longest.jitterSeconds * rateHz <= 1) return [];
+  return [
+    note(
+      `The clock wanders by ${jitter} about a straight line while its steps stay even; the samples are taken as even.`,
+    ),
+  ];
+}
+
+function cost(rateHz: number): string {
+  const loss = (ratio: number) => `${quantity(interpolationLossDb(ratio), 'dB', 2)} at ${hertz(ratio * rateHz)}`;
+  return `the samples are interpolated onto an even ${hertz(rateHz, 4)}, which costs up to ${loss(0.1)} and ${loss(0.25)}`;
 }
 
 function stampNotes({ survey }: Findings): Note[] {
@@ -118,7 +141,9 @@ function valueNotes({ survey, kept, faults, stretches, nameOf }: Findings): Note
     const [{ line, field, text }] = faults.first;
     const where = field < 0 ? `row ${line}: "${text}"` : `row ${line}, column "${nameOf(field)}": "${text}"`;
     found.push(
-      warning(`${plural(faults.rows, 'row')} could not be read and count as missing, the first being ${where}.`),
+      warning(
+        `${plural(faults.rows, 'row')} could not be read and ${faults.rows === 1 ? 'counts' : 'count'} as missing, the first being ${where}.`,
+      ),
     );
   }
   for (const { name, fold } of kept) {
@@ -140,10 +165,6 @@ function valueNotes({ survey, kept, faults, stretches, nameOf }: Findings): Note
   if (survey.faults.incompleteLine > 0)
     found.push(note(`The last row, ${survey.faults.incompleteLine}, is incomplete and was dropped.`));
   return found;
-}
-
-function loss(ratio: number): string {
-  return quantity(interpolationLossDb(ratio), 'dB', 2);
 }
 
 function plural(number: number, one: string, many = `${one}s`): string {

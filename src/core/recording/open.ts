@@ -63,7 +63,7 @@ function recordingOf(found: Survey, columns: readonly Column[], sha256: string):
   const judged = judge(found, columns);
   const kept = judged.filter(({ why }) => why === null);
   const readable = judged.filter(({ fold }) => fold.present > 0).map(({ column }) => column.field);
-  const faults = found.faults.of([timeColumn.field, ...readable]);
+  const faults = found.faults.of(timeColumn.field < 0 ? readable : [timeColumn.field, ...readable]);
   refuseUnreadable(layout.file, found.rows, faults, nameOf);
   refuseEmpty(found, judged);
   const time = found.time!;

@@ -3,6 +3,8 @@ import { RowWriter } from './row-writer.ts';
 import type { Layout, RowBatch, RowLane } from './rows.ts';
 
 const QUOTE = '"';
+/** Characters behind which a quote that is still open is taken for a stray one. */
+const LONGEST_RECORD = 1 << 20;
 const COMMENT = /^\s*(?:#|%|\/\/)/;
 
 /** Splits a piece of text that ends at a line end into records of fields; a delimiter of one blank stands for any run of blanks. */
@@ -29,10 +31,11 @@ export class TextLane implements RowLane {
   private readonly decoder: TextDecoder;
   private readonly newline: '\n' | '\r';
   private rest = '';
-  /** Quotes are open at the end of `rest` up to `seen`, and the last line end outside quotes before it. */
+  /** `rest` is scanned up to `seen`; whole records end at `cut`. */
   private seen = 0;
-  private quoted = false;
   private cut = 0;
+  private quoted = false;
+  private openedAt = 0;
   private records: string[][] = [];
   private nextRecord = 0;
   private line = 1;
@@ -52,14 +55,13 @@ export class TextLane implements RowLane {
   }
 
   feed(bytes: Uint8Array): void {
-    this.take(this.decoder.decode(bytes, { stream: true }));
+    this.rest += this.decoder.decode(bytes, { stream: true });
   }
 
   finish(): void {
-    this.take(this.decoder.decode());
-    this.terminated = this.rest.slice(this.cut) === '';
+    this.rest += this.decoder.decode();
+    this.terminated = this.rest === '' || this.rest.endsWith(this.newline);
     if (!this.terminated) this.rest += this.newline;
-    this.cut = this.rest.length;
     this.ended = true;
   }
 
@@ -71,6 +73,7 @@ export class TextLane implements RowLane {
         this.row(this.records[this.nextRecord++]);
         if (writer.full) return writer.deliver();
       }
+      this.scan();
       if (this.cut === 0) break;
       this.split();
     }
@@ -79,13 +82,22 @@ export class TextLane implements RowLane {
     return writer.deliver();
   }
 
-  private take(text: string): void {
-    this.rest += text;
-    for (; this.seen < this.rest.length; this.seen++) {
+  /** Looks for the last line end outside quotes. A quote open for too long ends the piece, so that only what it spoilt is lost. */
+  private scan(): void {
+    while (this.seen < this.rest.length) {
       const sign = this.rest[this.seen];
-      if (sign === QUOTE) this.quoted = !this.quoted && this.mayOpen();
-      else if (sign === this.newline && !this.quoted) this.cut = this.seen + 1;
+      if (sign === QUOTE) {
+        this.quoted = !this.quoted && this.mayOpen();
+        this.openedAt = this.seen;
+      }
+      this.seen++;
+      if (sign !== this.newline) continue;
+      const stray = this.quoted && this.seen - this.openedAt > LONGEST_RECORD;
+      if (stray) this.quoted = false;
+      if (!this.quoted) this.cut = this.seen;
+      if (stray) return;
     }
+    if (this.ended) this.cut = this.rest.length;
   }
 
   /** A quote opens a field at its start only, or again behind the one that closed it: a doubled quote within. */
@@ -97,7 +109,8 @@ export class TextLane implements RowLane {
   private split(): void {
     const piece = this.rest.slice(0, this.cut - 1);
     this.rest = this.rest.slice(this.cut);
-    this.seen = this.rest.length;
+    this.seen -= this.cut;
+    this.openedAt -= this.cut;
     this.cut = 0;
     this.records = splitFields(piece, this.layout.dialect.delimiter, this.newline);
     this.nextRecord = 0;

@@ -27,8 +27,10 @@ export interface TimeBase {
   readonly gaps: readonly Gap[];
   /** Rate of the uniform grid, Hz. */
   readonly rateHz: number;
-  /** True where the rows stand so unevenly that they must be interpolated. */
+  /** True where the rows stand so unevenly, or some of them at such another rate, that they must be interpolated. */
   readonly uneven: boolean;
+  /** The first run of some length at another rate than the longest; null where there is none. */
+  readonly otherRate: TimeRun | null;
 }
 
 /** Unevenness that is let pass, periods. */
@@ -83,13 +85,16 @@ export class TimeBaseFold {
   /** The time base of all rows pushed, at least one; `rateHz` where the rate is given. */
   result(rateHz?: number): TimeBase {
     if (this.rows > 0) this.close();
-    const longest = this.runs.reduce((a, b) => (b.toRow - b.fromRow > a.toRow - a.fromRow ? b : a));
+    const { runs, gaps, rule } = this;
+    const longest = runs.reduce((a, b) => (b.toRow - b.fromRow > a.toRow - a.fromRow ? b : a));
+    const otherRate = rule.coarse ? null : (runs.find((run) => differs(run, longest)) ?? null);
     return {
-      runs: this.runs,
+      runs,
       longest,
-      gaps: this.gaps,
+      gaps,
       rateHz: rateHz ?? roundedRate(1 / longest.periodSeconds),
-      uneven: isUneven(longest, this.rule),
+      uneven: otherRate !== null || (!rule.coarse && isUneven(longest, rule)),
+      otherRate,
     };
   }
 
@@ -133,11 +138,15 @@ export class TimeBaseFold {
  * alone leaves the steps even. What the stamps' resolution explains does not count: q/√12 of a stamp, q/√6 of a step.
  */
 function isUneven({ jitterSeconds, stepDeviationSeconds, periodSeconds }: TimeRun, rule: TimeRule): boolean {
-  if (rule.coarse) return false;
   const q = rule.resolutionSeconds;
   const stamps = Math.sqrt(Math.max(0, jitterSeconds ** 2 - q ** 2 / 12));
   const steps = Math.sqrt(Math.max(0, stepDeviationSeconds ** 2 - q ** 2 / 6) / 2);
   return Math.min(stamps, steps) > LET_PASS * periodSeconds;
+}
+
+/** A run of some length at another rate, as where a logger was set anew: its rows are no samples of one grid. */
+function differs({ fromRow, toRow, periodSeconds }: TimeRun, longest: TimeRun): boolean {
+  return toRow - fromRow >= 64 && Math.abs(periodSeconds / longest.periodSeconds - 1) > LET_PASS;
 }
 
 /** The shortest number within rounding of the rate: stamps 0.005 s apart make 200 Hz, not 199.99999999999997. */

@@ -64,6 +64,12 @@ describe('input that cannot be used is told in one sentence that names the file'
     );
   });
 
+  it('counts a ragged row once, with a time column or without', async () => {
+    const text = `a,b\n${lines(500, (i) => (i === 9 ? '1' : `${wave(i)},${wave(2 * i)}`))}`;
+    const { facts } = await read(text, { rateHz: 100 });
+    expect(facts.notes[0].text).toBe('1 row could not be read and counts as missing, the first being row 11: "1".');
+  });
+
   it('reads on where exactly 1 % of the rows are unreadable, and says so', async () => {
     const { facts, runs } = await read(table(500, (i) => `${i / 100},${i % 100 === 7 ? 'bad\u0007' : wave(i)}`));
     expect(runs[0].channels[0]).toHaveLength(500);

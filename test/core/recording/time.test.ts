@@ -125,7 +125,7 @@ describe('gaps, repeats and rows without a stamp', () => {
     expect(facts.gaps[0].lengthSeconds).toBeCloseTo(1.006, 9);
     expect(runs.map((run) => run.channels[0].length)).toEqual([300, 100]);
     expect(runs[1].startSeconds).toBeCloseTo(4, 2);
-    expect(facts.notes[0].text).toMatch(/^1 gap in time, the first of 1\.01 s before row 302/);
+    expect(facts.notes[0].text).toMatch(/^1 gap in time of 1\.01 s before row 302/);
   });
 
   it('drops rows that repeat a stamp', async () => {
@@ -159,6 +159,17 @@ describe('gaps, repeats and rows without a stamp', () => {
     expect(facts.notes.map(({ text }) => text)).toEqual([
       '2 rows, the first in row 62, had no time stamp and were placed one period behind the row before.',
     ]);
+  });
+
+  it('puts a second run at another rate onto the grid of the longest', async () => {
+    const { facts, runs } = await read(
+      stamped('t [s]', 500, (i) => (i < 300 ? i / 100 : 10 + (i - 300) / 110).toFixed(6)),
+    );
+    expect(facts).toMatchObject({ rateHz: 100, resampled: true });
+    expect(facts.notes[1].text).toMatch(
+      /^The rate changes from 100\.0 Hz to 110\.0 Hz in the run at 10\.0 s; the samples are/,
+    );
+    expect(runs.map((run) => run.channels[0].length)).toEqual([300, Math.floor((199 / 110) * 100) + 1]);
   });
 
   it('drops runs of a single sample', async () => {

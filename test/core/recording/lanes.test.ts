@@ -243,6 +243,14 @@ describe('TextLane', () => {
       });
   });
 
+  it('gives a stray quote up after a mebibyte, whatever the pieces', () => {
+    const text = `1,"open\n${'2,x\n'.repeat(300_000)}`;
+    for (const chunk of [1000, 1 << 22]) {
+      const { values } = run(new TextLane(layout(2, { valueFields: [0] }), 1000), text, chunk);
+      expect(values.length).toBeGreaterThan(30_000);
+    }
+  });
+
   it('takes a quote within a field for what it is', () => {
     expect(run(new TextLane(layout(2, { valueFields: [0] }), 9), '1,5" pipe\n2,x\n').values).toEqual([[1], [2]]);
   });
