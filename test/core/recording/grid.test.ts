@@ -39,6 +39,16 @@ describe('missing values', () => {
     expect(runs[0].channels[0].slice(194)).toEqual(Array(6).fill(3 * 194));
   });
 
+  it('take a short run out where a channel has no value in all of it', async () => {
+    const text = `t [s],a,b\n${lines(203, (i) => {
+      const t = i < 100 ? i / 100 : i < 103 ? 5 + i / 100 : 9 + i / 100;
+      return `${t.toFixed(2)},${i >= 100 && i < 103 ? '' : wave(i)},${wave(2 * i)}`;
+    })}`;
+    const { facts, runs } = await read(text);
+    expect(facts.gaps).toHaveLength(2);
+    expect(runs.map(({ channels }) => channels[0].length)).toEqual([100, 100]);
+  });
+
   it('are bridged by time where the stamps are uneven', async () => {
     const text = `t [s],a\n${lines(300, (i) => {
       const t = uneven(i, 0.2);
@@ -87,7 +97,10 @@ describe('resampling of uneven stamps', () => {
 
 describe('cubicWeights', () => {
   const times = fc
-    .array(fc.double({ min: 0.01, max: 1, noNaN: true }), { minLength: 3, maxLength: 3 })
+    .array(fc.oneof(fc.constantFrom(1e-6, 0.01), fc.double({ min: 0.01, max: 1, noNaN: true })), {
+      minLength: 3,
+      maxLength: 3,
+    })
     .map(([a, b, c]) => Float64Array.of(0, a, a + b, a + b + c));
 
   it('sum to one and never amplify by more than two', () => {

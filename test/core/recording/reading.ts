@@ -19,7 +19,7 @@ export async function read(
 }
 
 /** Plays a recording once and puts its blocks together; throws where blocks do not follow on each other. */
-export async function wholeRuns({ blocks }: Recording): Promise<WholeRun[]> {
+export async function wholeRuns({ facts, blocks }: Recording): Promise<WholeRun[]> {
   const runs: { startSeconds: number; channels: number[][] }[] = [];
   for await (const block of blocks()) {
     if (block.firstSample === 0)
@@ -27,6 +27,8 @@ export async function wholeRuns({ blocks }: Recording): Promise<WholeRun[]> {
     const run = runs[block.run];
     if (runs.length !== block.run + 1 || run.channels[0].length !== block.firstSample)
       throw new Error(`Block at ${block.run}/${block.firstSample} does not follow.`);
+    if (Math.abs(block.startSeconds - run.startSeconds - block.firstSample / facts.rateHz) > 1e-9)
+      throw new Error(`Block at ${block.run}/${block.firstSample} tells the wrong time.`);
     block.channels.forEach((channel, c) => {
       if (channel.length !== block.length) throw new Error('A channel is not as long as its block.');
       run.channels[c].push(...channel);

@@ -13,8 +13,9 @@ const clock = (milliseconds: number) => {
   return `${two(h)}:${two(m)}:${two(s)}.${String(ms % 1000).padStart(3, '0')}`;
 };
 
+const epoch = 1_714_557_600;
+
 describe('kinds of time, all of them 100 Hz', () => {
-  const epoch = 1_714_557_600;
   const cases: [name: string, stamp: (i: number) => string | number, kind: string][] = [
     ['time [s]', (i) => (i / 100).toFixed(2), 's'],
     ['time_ms', (i) => 10 * i, 'ms'],
@@ -67,6 +68,18 @@ describe('kinds of time, all of them 100 Hz', () => {
     expect(facts.timeName).toBe('time');
     expect(facts.channels.map(({ name }) => name)).toEqual(['response_time_ms', 'a']);
     expect(facts.leftOut.map(({ name }) => name)).toEqual(['date', 'n']);
+  });
+
+  it('reads zones as what they are', async () => {
+    const zones = ['Z', '+02:00', '-0330', '+05'];
+    const offsets = [0, 120, -210, 300];
+    const { facts } = await read(
+      stamped('date', 200, (i) => {
+        const local = new Date(epoch * 1000 + 10 * i + offsets[i % 4] * 60_000);
+        return local.toISOString().replace('Z', zones[i % 4]);
+      }),
+    );
+    expect(facts).toMatchObject({ rateHz: 100, gaps: [], durationSeconds: 2 });
   });
 
   it('carries a clock on past midnight, and counters past their end', async () => {
@@ -206,12 +219,21 @@ describe('stamps coarser than they should be', () => {
     expect(runs[0].channels[0]).toEqual(Array.from({ length: 4000 }, (_, i) => wave(i)));
   });
 
-  it('still finds single lost samples where the stamps step by exactly one period', async () => {
-    const lost = new Set([100, 700, 1500]);
-    const all = Array.from({ length: 3000 }, (_, i) => i).filter((i) => !lost.has(i));
+  it.each([
+    [[1500], [1502]],
+    [
+      [700, 1400, 2100],
+      [702, 1401, 2100],
+    ],
+    [
+      [100, 700, 1500],
+      [102, 701, 1500],
+    ],
+  ])('still finds %j lost where the stamps step by exactly one period', async (lost, found) => {
+    const all = Array.from({ length: 3000 }, (_, i) => i).filter((i) => !lost.includes(i));
     const { facts } = await read(`t [ms],a\n${all.map((i) => `${i},${wave(i)}`).join('\n')}\n`);
     expect(facts).toMatchObject({ rateHz: 1000, resampled: false });
-    expect(facts.gaps.map(({ row }) => row)).toEqual([102, 701, 1500]);
+    expect(facts.gaps.map(({ row }) => row)).toEqual(found);
   });
 
   it('finds many random losses too', async () => {
