@@ -96,10 +96,8 @@ async function studyAndFilter(
 }
 
 async function reportOf(done: Study): Promise<string> {
-  const light = await drawPictures(reportCharts(done, 'light'));
-  const dark = await drawPictures(reportCharts(done, 'dark'));
-  const uri = (png: Buffer | undefined) => `data:image/png;base64,${(png as Buffer).toString('base64')}`;
-  const pictures = [...light.keys()].map((id) => ({ id, light: uri(light.get(id)), dark: uri(dark.get(id)) }));
+  const drawn = await drawPictures(reportCharts(done));
+  const pictures = [...drawn].map(([id, png]) => ({ id, png: `data:image/png;base64,${png.toString('base64')}` }));
   return renderReport(done, pictures, { commandLine: commandLine(), madeAt: madeAt() });
 }
 

@@ -33,7 +33,7 @@ function recordingLine(role: string, facts: RecordingFacts, ink: Ink): string {
 function channelLines({ channel, keep, advice, lines }: ChannelStudy, ink: Ink): string[] {
   const tint = { clear: ink.good, compromise: ink.careful, inseparable: ink.bad }[advice.verdict];
   const [low, high] = advice.cornerRangeHz;
-  const head = `${ink.bold(channel.name)}  ${tint(advice.verdict)}  corner ${ink.bold(hertz(advice.cornerHz))} ${ink.faint(`(90 % interval ${hertz(low)} to ${hertz(high)})`)}`;
+  const head = `${ink.bold(channel.name)}  ${tint(advice.verdict)}  corner ${ink.bold(hertz(advice.cornerHz))} ${ink.faint(`(90 % interval ${hertz(low, 3)} to ${hertz(high, 3)})`)}`;
   return [
     head,
     ...wrap(verdictSentence(channel.unit, keep, advice)),

@@ -1,6 +1,6 @@
 import type { Recording } from './recording/recording.ts';
 import { partsOf, type Stretch } from './simulation/stretches.ts';
-import { segmentLengths } from './spectrum/levels.ts';
+import { lineLevel, lineSegmentSamples, segmentLengths } from './spectrum/levels.ts';
 import type { LevelSpectrum } from './spectrum/spectrum.ts';
 import { ActivityFold, type ActivityWindow, stationaryStretches } from './spectrum/stationary.ts';
 import { WelchFold } from './spectrum/welch.ts';
@@ -12,7 +12,10 @@ export interface QuietEvidence {
   readonly part: QuietPart;
   /** Why something was left out; null where all was used. */
   readonly reason: string | null;
+  /** The levels that are merged to one spectrum. */
   readonly levels: readonly LevelSpectrum[];
+  /** The level at which lines are looked for. */
+  readonly lineLevel: LevelSpectrum;
 }
 
 /** One channel of the active recording. */
@@ -40,7 +43,7 @@ export async function listenQuiet(recording: Recording, indices: readonly number
   return found.map(({ stretches, usedSamples, totalSamples, reason }, i) => ({
     stretches,
     reason,
-    levels: folds[i].result(),
+    ...levelsOf(folds[i].result(), ladderOf(stretches)),
     part: {
       usedSeconds: usedSamples / rateHz,
       totalSeconds: totalSamples / rateHz,
@@ -80,10 +83,23 @@ async function activityOf(recording: Recording, indices: readonly number[]): Pro
   return folds.map((fold) => fold.result());
 }
 
+function longestOf(stretches: readonly Stretch[]): number {
+  return Math.max(...stretches.map((stretch) => stretch.samples));
+}
+
+function ladderOf(stretches: readonly Stretch[]): number[] {
+  return segmentLengths(longestOf(stretches));
+}
+
+function levelsOf(all: readonly LevelSpectrum[], ladder: readonly number[]) {
+  return { levels: all.filter((level) => ladder.includes(level.segmentSamples)), lineLevel: lineLevel(all) };
+}
+
 function welchOver(rateHz: number, stretches: readonly Stretch[]): WelchFold {
+  const lengths = new Set([...ladderOf(stretches), lineSegmentSamples(longestOf(stretches))]);
   return new WelchFold({
     rateHz,
-    segmentSamples: segmentLengths(Math.max(...stretches.map((stretch) => stretch.samples))),
+    segmentSamples: [...lengths].sort((a, b) => b - a),
     expectedSamples: stretches.reduce((sum, stretch) => sum + stretch.samples, 0),
   });
 }

@@ -13,9 +13,8 @@ import { chooseInsets, type InsetPlace } from './simulation/inset.ts';
 import { type FilteredSink, simulateOnActive } from './simulation/on-active.ts';
 import { type MeasuredNoise, simulateOnQuiet } from './simulation/on-quiet.ts';
 import { noiseFloor } from './spectrum/floor.ts';
-import { lineLevel } from './spectrum/levels.ts';
 import { findLines } from './spectrum/lines.ts';
-import type { LevelSpectrum, NoiseLine } from './spectrum/spectrum.ts';
+import type { NoiseLine } from './spectrum/spectrum.ts';
 import type { ChannelStudy, Study, StudySettings } from './study-result.ts';
 
 /** What a study is made from. */
@@ -35,7 +34,6 @@ interface Worked {
   readonly quiet: QuietEvidence;
   readonly active: ActiveEvidence;
   readonly lines: readonly NoiseLine[];
-  readonly lineLevel: LevelSpectrum;
   readonly answer: Answer;
   readonly insets: readonly InsetPlace[];
 }
@@ -56,7 +54,7 @@ export async function study({ quiet, active, settings, version, sink }: StudyInp
       settlingSeconds: work.answer.choice.rival.settlingSeconds,
       stretches: work.quiet.stretches,
       lines: work.lines,
-      lineLevel: work.lineLevel,
+      lineLevel: work.quiet.lineLevel,
     })),
   );
   const discrete = worked.map((work) => filterAt(work, active.facts.rateHz));
@@ -89,9 +87,8 @@ async function workOut(
     channels.map((channel) => channel.activeIndex),
   );
   return channels.map((paired, i) => {
-    const { levels } = quietEvidence[i];
-    const level = lineLevel(levels);
-    const lines = findLines(level);
+    const { levels, lineLevel } = quietEvidence[i];
+    const lines = findLines(lineLevel);
     const answer = advise({
       ...settings,
       limits: settings,
@@ -104,7 +101,6 @@ async function workOut(
       quiet: quietEvidence[i],
       active: activeEvidence[i],
       lines,
-      lineLevel: level,
       answer,
       insets: chooseInsets(activeEvidence[i].windows, insetSamples(answer, active.facts.rateHz)),
     };

@@ -1,6 +1,6 @@
 import type { ScaleOptions } from 'chart.js';
 import { significant } from '../core/figure.ts';
-import type { Colours } from './colours.ts';
+import { COLOURS } from './colours.ts';
 
 /** Size of text in pictures, pixels. */
 export const TEXT_PX = 13;
@@ -10,7 +10,6 @@ type Place = 'bottom' | 'left' | 'right';
 
 /** A linear axis with its quantity and unit. */
 export function linearAxis(
-  colours: Colours,
   place: Place,
   title: string,
   range: { readonly min?: number; readonly max?: number; readonly grid?: boolean } = {},
@@ -21,14 +20,15 @@ export function linearAxis(
     position: place,
     ...(min === undefined ? {} : { min }),
     ...(max === undefined ? {} : { max }),
-    title: titleOf(colours, title),
-    grid: { color: colours.grid, drawOnChartArea: grid },
-    border: { color: colours.faint },
+    title: titleOf(title),
+    grid: { color: COLOURS.grid, drawOnChartArea: grid },
+    border: { color: COLOURS.faint },
     ticks: {
-      color: colours.faint,
+      color: COLOURS.faint,
       font: { size: TEXT_PX, family: FONT_FAMILY },
       maxTicksLimit: place === 'bottom' ? 11 : 7,
       maxRotation: 0,
+      includeBounds: false,
       callback: (value) => plain(Number(value)),
     },
   } as ScaleOptions<'linear'>;
@@ -36,7 +36,6 @@ export function linearAxis(
 
 /** A logarithmic axis that labels the decades, and 2 and 5 where there are few of them. */
 export function logarithmicAxis(
-  colours: Colours,
   place: Place,
   title: string,
   range: { readonly min: number; readonly max: number },
@@ -48,11 +47,11 @@ export function logarithmicAxis(
     position: place,
     min: range.min,
     max: range.max,
-    title: titleOf(colours, title),
-    grid: { color: colours.grid },
-    border: { color: colours.faint },
+    title: titleOf(title),
+    grid: { color: COLOURS.grid },
+    border: { color: COLOURS.faint },
     ticks: {
-      color: colours.faint,
+      color: COLOURS.faint,
       font: { size: TEXT_PX, family: FONT_FAMILY },
       autoSkip: false,
       maxRotation: 0,
@@ -73,6 +72,6 @@ function plain(value: number): string {
   return significant(rounded, 1);
 }
 
-function titleOf(colours: Colours, text: string) {
-  return { display: true, text, color: colours.ink, font: { size: TEXT_PX, family: FONT_FAMILY } };
+function titleOf(text: string) {
+  return { display: true, text, color: COLOURS.ink, font: { size: TEXT_PX, family: FONT_FAMILY } };
 }

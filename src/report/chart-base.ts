@@ -1,14 +1,13 @@
 import type { ChartConfiguration, ChartDataset, ChartOptions, Plugin } from 'chart.js';
 import { FONT_FAMILY, TEXT_PX } from './axis.ts';
 import type { Point } from './chart-spec.ts';
-import type { Colours } from './colours.ts';
+import { COLOURS } from './colours.ts';
 
 /** Legends name only curves with a label. */
 const NAMELESS = '';
 
 /** A chart of curves over common axes, still and without points, as every picture of the report is. */
 export function curves(
-  colours: Colours,
   datasets: ChartDataset<'line', Point[]>[],
   scales: NonNullable<ChartOptions<'line'>['scales']>,
   plugins: Plugin<'line'>[] = [],
@@ -29,17 +28,18 @@ export function curves(
           position: 'top',
           align: 'start',
           labels: {
-            color: colours.ink,
+            color: COLOURS.ink,
             font: { size: TEXT_PX, family: FONT_FAMILY },
             boxHeight: 1,
             boxWidth: 28,
             filter: (item) => item.text !== NAMELESS,
+            sort: (a, b) => (a.datasetIndex ?? 0) - (b.datasetIndex ?? 0),
           },
         },
         tooltip: { enabled: false },
       },
     },
-    plugins: [background(colours), ...plugins],
+    plugins: [background(), ...plugins],
   };
 }
 
@@ -88,12 +88,12 @@ export function envelope(options: {
 }
 
 /** Paints the paper; the drawing library's own option breaks a second size in one bundle. */
-function background(colours: Colours): Plugin<'line'> {
+function background(): Plugin<'line'> {
   return {
     id: 'paper',
     beforeDraw({ ctx, width, height }) {
       ctx.save();
-      ctx.fillStyle = colours.paper;
+      ctx.fillStyle = COLOURS.paper;
       ctx.fillRect(0, 0, width, height);
       ctx.restore();
     },

@@ -1,6 +1,5 @@
 import type { ChannelStudy, Study } from '../core/study-result.ts';
 import type { ChartSpec } from './chart-spec.ts';
-import type { Theme } from './colours.ts';
 import { spectrumChart } from './spectrum-chart.ts';
 import { insetChart, overviewChart } from './trace-charts.ts';
 
@@ -14,13 +13,13 @@ export function pictureIds(study: ChannelStudy, place: number) {
 }
 
 /** Every picture of the report in one theme: per channel the overview, the insets and the spectra. */
-export function reportCharts(study: Study, theme: Theme): readonly ChartSpec[] {
+export function reportCharts(study: Study): readonly ChartSpec[] {
   return study.channels.flatMap((channel, place) => {
     const ids = pictureIds(channel, place);
     return [
-      overviewChart(channel, ids.overview, theme),
-      ...channel.simulation.insets.map((inset, i) => insetChart(channel, inset, ids.insets[i], theme)),
-      spectrumChart(channel, ids.spectrum, theme),
+      overviewChart(channel, ids.overview),
+      ...channel.simulation.insets.map((inset, i) => insetChart(channel, inset, ids.insets[i])),
+      spectrumChart(channel, ids.spectrum),
     ];
   });
 }

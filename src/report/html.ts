@@ -8,11 +8,10 @@ import { STYLE } from './style.ts';
 import { linesTable, rivalsTable } from './tables.ts';
 import { verdictSection } from './verdicts.ts';
 
-/** One drawn picture as data URIs, for light and for dark. */
+/** One drawn picture as a data URI. */
 export interface Picture {
   readonly id: string;
-  readonly light: string;
-  readonly dark: string;
+  readonly png: string;
 }
 
 /** What the study itself does not know. */
@@ -30,7 +29,7 @@ const POLICY = "default-src 'none'; img-src data:; style-src 'unsafe-inline'";
  * `pictures` hold one entry for each of `reportCharts`. Throws RangeError where one is missing.
  */
 export function renderReport(study: Study, pictures: readonly Picture[], context: ReportContext): string {
-  const specs = new Map(reportCharts(study, 'light').map((spec) => [spec.id, spec]));
+  const specs = new Map(reportCharts(study).map((spec) => [spec.id, spec]));
   const drawn = new Map(pictures.map((picture) => [picture.id, picture]));
   const figure = (id: string, caption: string) => figureOf(specs.get(id), drawn.get(id), caption);
   const page = html`<!doctype html>
@@ -98,7 +97,7 @@ function inUse({ inUse: bands }: ChannelStudy): Markup | '' {
 
 function figureOf(spec: ChartSpec | undefined, picture: Picture | undefined, caption: string): Markup {
   if (spec === undefined || picture === undefined) throw new RangeError('A picture of the report is missing');
-  return html`<figure><picture><source media="print" srcset="${picture.light}"><source media="(prefers-color-scheme: dark)" srcset="${picture.dark}"><img src="${picture.light}" width="${spec.widthPx}" height="${spec.heightPx}" alt="${spec.description}"></picture><figcaption>${caption}</figcaption></figure>
+  return html`<figure><img src="${picture.png}" width="${spec.widthPx}" height="${spec.heightPx}" alt="${spec.description}"><figcaption>${caption}</figcaption></figure>
 `;
 }
 

@@ -6,7 +6,7 @@ import type { ChannelStudy } from '../core/study-result.ts';
 import { FONT_FAMILY, linearAxis, logarithmicAxis, TEXT_PX } from './axis.ts';
 import { curve, curves } from './chart-base.ts';
 import type { ChartSpec, Point } from './chart-spec.ts';
-import { COLOURS, type Colours, type Theme } from './colours.ts';
+import { COLOURS } from './colours.ts';
 
 /** Lowest gain drawn, dB. */
 const LOWEST_GAIN_DB = -100;
@@ -14,8 +14,7 @@ const LOWEST_GAIN_DB = -100;
 const LABELLED_LINES = 6;
 
 /** Spectra of both recordings and behind the filter, with keep band, noise lines, corner and the filter's gain over them. */
-export function spectrumChart(study: ChannelStudy, id: string, theme: Theme): ChartSpec {
-  const colours = COLOURS[theme];
+export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
   const { channel, quietSpectrum, activeSpectrum, filteredSpectrum, advice } = study;
   const minHz = Math.min(quietSpectrum.frequencyHz[0], activeSpectrum.frequencyHz[0]);
   const maxHz = Math.max(quietSpectrum.rateHz, activeSpectrum.rateHz) / 2;
@@ -28,26 +27,25 @@ export function spectrumChart(study: ChannelStudy, id: string, theme: Theme): Ch
     widthPx: 1120,
     heightPx: 440,
     config: curves(
-      colours,
       [
         curve({
           label: 'active',
           points: points(activeSpectrum, range.min),
-          colour: colours.before,
+          colour: COLOURS.before,
           width: 2,
           order: 4,
         }),
         curve({
           label: 'quiet',
           points: points(quietSpectrum, range.min),
-          colour: colours.quiet,
+          colour: COLOURS.quiet,
           width: 1.5,
           order: 3,
         }),
         curve({
           label: 'noise floor',
           points: floorPoints(study, range.min),
-          colour: colours.floor,
+          colour: COLOURS.floor,
           width: 1.5,
           dash: [2, 3],
           order: 2,
@@ -55,14 +53,14 @@ export function spectrumChart(study: ChannelStudy, id: string, theme: Theme): Ch
         curve({
           label: 'active, filtered',
           points: points(filteredSpectrum, range.min),
-          colour: colours.after,
+          colour: COLOURS.after,
           width: 2.5,
           order: 1,
         }),
         curve({
           label: 'gain (right)',
           points: gainPoints(study, minHz, maxHz),
-          colour: colours.gain,
+          colour: COLOURS.gain,
           width: 1.5,
           dash: [9, 5],
           axis: 'gain',
@@ -70,11 +68,11 @@ export function spectrumChart(study: ChannelStudy, id: string, theme: Theme): Ch
         }),
       ],
       {
-        x: logarithmicAxis(colours, 'bottom', 'frequency, Hz', { min: minHz, max: maxHz }),
-        y: logarithmicAxis(colours, 'left', `amplitude density${unit}`, range),
-        gain: linearAxis(colours, 'right', 'gain, dB', { min: LOWEST_GAIN_DB, max: 10, grid: false }),
+        x: logarithmicAxis('bottom', 'frequency, Hz', { min: minHz, max: maxHz }),
+        y: logarithmicAxis('left', `amplitude density${unit}`, range),
+        gain: linearAxis('right', 'gain, dB', { min: LOWEST_GAIN_DB, max: 10, grid: false }),
       },
-      [marks(study, colours, `corner ${hertz(advice.cornerHz)}`)],
+      [marks(study, `corner ${hertz(advice.cornerHz)}`)],
     ),
   };
 }
@@ -88,11 +86,16 @@ function describe({ channel, lines, keep, advice }: ChannelStudy): string {
 }
 
 function points(spectrum: Spectrum, floor: number): Point[] {
-  return Array.from(spectrum.frequencyHz, (x, i) => ({ x, y: Math.max(floor, Math.sqrt(spectrum.density[i])) }));
+  return Array.from(spectrum.frequencyHz, (x, i) => ({ x, y: above(floor, Math.sqrt(spectrum.density[i])) }));
 }
 
 function floorPoints({ quietSpectrum, floorDensity }: ChannelStudy, floor: number): Point[] {
-  return Array.from(quietSpectrum.frequencyHz, (x, i) => ({ x, y: Math.max(floor, Math.sqrt(floorDensity[i])) }));
+  return Array.from(quietSpectrum.frequencyHz, (x, i) => ({ x, y: above(floor, Math.sqrt(floorDensity[i])) }));
+}
+
+/** A curve that leaves the picture is broken there, not drawn along its edge. */
+function above(floor: number, value: number): number {
+  return value < floor ? Number.NaN : value;
 }
 
 function gainPoints({ advice }: ChannelStudy, minHz: number, maxHz: number): Point[] {
@@ -116,7 +119,7 @@ function amplitudeRange({ quietSpectrum, activeSpectrum }: ChannelStudy): { min:
 }
 
 /** Shades the keep band, marks the corner, and labels the noise lines along the upper edge. */
-function marks(study: ChannelStudy, colours: Colours, cornerLabel: string): Plugin<'line'> {
+function marks(study: ChannelStudy, cornerLabel: string): Plugin<'line'> {
   const { keep, lines, advice } = study;
   const strongest = [...lines].sort((a, b) => b.amplitude - a.amplitude).slice(0, LABELLED_LINES);
   return {
@@ -126,9 +129,9 @@ function marks(study: ChannelStudy, colours: Colours, cornerLabel: string): Plug
       if (x === undefined || keep.highHz <= 0) return;
       const left = keep.lowHz > 0 ? x.getPixelForValue(keep.lowHz) : chartArea.left;
       ctx.save();
-      ctx.fillStyle = colours.keep;
+      ctx.fillStyle = COLOURS.keep;
       ctx.fillRect(left, chartArea.top, x.getPixelForValue(keep.highHz) - left, chartArea.height);
-      ctx.fillStyle = colours.ink;
+      ctx.fillStyle = COLOURS.ink;
       ctx.font = `${TEXT_PX}px '${FONT_FAMILY}'`;
       ctx.fillText(`keep band to ${hertz(keep.highHz, 3)}`, left + 8, chartArea.bottom - 10);
       ctx.restore();
@@ -143,17 +146,17 @@ function marks(study: ChannelStudy, colours: Colours, cornerLabel: string): Plug
       let row = 0;
       for (const line of [...lines].sort((a, b) => a.frequencyHz - b.frequencyHz)) {
         const at = x.getPixelForValue(line.frequencyHz);
-        ctx.fillStyle = colours.mark;
+        ctx.fillStyle = COLOURS.mark;
         triangle(ctx, at, chartArea.top + 2);
         if (!strongest.includes(line)) continue;
         const label = hertz(line.frequencyHz, 3);
         row = at - taken < ctx.measureText(label).width + 10 ? (row + 1) % 3 : 0;
         taken = at;
-        ctx.fillStyle = colours.ink;
+        ctx.fillStyle = COLOURS.ink;
         ctx.fillText(label, at, chartArea.top + 26 + 17 * row);
       }
       const corner = x.getPixelForValue(advice.cornerHz);
-      ctx.strokeStyle = colours.ink;
+      ctx.strokeStyle = COLOURS.ink;
       ctx.lineWidth = 1;
       ctx.setLineDash([1, 3]);
       ctx.beginPath();
@@ -161,7 +164,7 @@ function marks(study: ChannelStudy, colours: Colours, cornerLabel: string): Plug
       ctx.lineTo(corner, chartArea.bottom);
       ctx.stroke();
       ctx.textAlign = 'left';
-      ctx.fillStyle = colours.ink;
+      ctx.fillStyle = COLOURS.ink;
       ctx.fillText(cornerLabel, corner + 6, chartArea.bottom - 28);
       ctx.restore();
     },

@@ -48,7 +48,8 @@ summary { cursor: pointer; color: var(--accent); }
 .figures dt { color: var(--faint); font-size: 0.85rem; }
 .figures dd { margin: 0; font-weight: 600; font-variant-numeric: tabular-nums; }
 figure { margin: 14px 0; }
-figure img { display: block; width: 100%; height: auto; border: 1px solid var(--line); }
+figure img { display: block; width: 100%; height: auto; border: 1px solid #d3d9d8; }
+@media screen and (prefers-color-scheme: dark) { figure img { filter: invert(0.91) hue-rotate(180deg); } }
 figcaption { color: var(--faint); font-size: 0.9rem; margin-top: 4px; max-width: 92ch; }
 .pair { display: grid; grid-template-columns: 1fr 1fr; gap: 0 16px; }
 .scroll { overflow-x: auto; }
@@ -57,6 +58,7 @@ table { border-collapse: collapse; width: 100%; font-size: 0.92rem; font-variant
 caption { text-align: left; color: var(--faint); padding: 4px 0 8px; }
 th, td { padding: 5px 14px 5px 0; text-align: right; border-bottom: 1px solid var(--line); vertical-align: top; white-space: nowrap; }
 th:first-child, td.text { text-align: left; }
+td.text, th.text { text-align: left; }
 td.text { white-space: normal; }
 thead th { color: var(--faint); font-weight: 600; border-bottom-color: var(--ink); vertical-align: bottom; }
 tbody th { font-weight: 500; }

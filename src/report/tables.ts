@@ -18,7 +18,7 @@ export function rivalsTable({ channel, rivals, advice }: ChannelStudy): Markup {
   return html`<div class="scroll" tabindex="0" role="region" aria-label="Rivals for ${channel.name}">
 <table>
 <caption>Rivals for ${channel.name}, each at its own best corner. Those that keep every limit come first, the simplest on top.</caption>
-<thead><tr><th scope="col">filter</th><th scope="col">order</th><th scope="col">corner</th><th scope="col">droop</th><th scope="col">rejection</th><th scope="col">noise in use after, RMS</th><th scope="col">error RMS</th><th scope="col">over Wiener bound</th><th scope="col">delay</th><th scope="col">settling 1 %</th><th scope="col">limits</th></tr></thead>
+<thead><tr><th scope="col">filter</th><th scope="col">order</th><th scope="col">corner</th><th scope="col">droop</th><th scope="col">rejection</th><th scope="col">noise in use after, RMS</th><th scope="col">error RMS</th><th scope="col">over Wiener bound</th><th scope="col">delay</th><th scope="col">settling 1 %</th><th scope="col" class="text">limits</th></tr></thead>
 <tbody>${sorted.map((rival) => rivalRow(rival, channel.unit, chosen(rival)))}</tbody>
 </table>
 </div>`;
@@ -36,7 +36,7 @@ export function linesTable({ channel, lines, lineGains }: ChannelStudy): Markup 
   return html`<div class="scroll" tabindex="0" role="region" aria-label="Noise lines of ${channel.name}">
 <table>
 <caption>Noise lines of ${channel.name} in the quiet recording, and the gain of the filter at each: computed, and measured by running the quiet recording through it.</caption>
-<thead><tr><th scope="col">frequency</th><th scope="col">amplitude</th><th scope="col">above the floor</th><th scope="col">gain computed</th><th scope="col">gain measured</th><th scope="col">family</th><th scope="col">could be folded from</th></tr></thead>
+<thead><tr><th scope="col">frequency</th><th scope="col">amplitude</th><th scope="col">above the floor</th><th scope="col">gain computed</th><th scope="col">gain measured</th><th scope="col" class="text">family</th><th scope="col" class="text">could be folded from</th></tr></thead>
 <tbody>${lines.map((line, i) => {
     const gain = lineGains[i];
     const folded = line.foldedFrom

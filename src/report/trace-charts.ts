@@ -3,11 +3,10 @@ import type { ChannelStudy, Inset, ThinnedTrace } from '../core/study-result.ts'
 import { linearAxis } from './axis.ts';
 import { curve, curves, envelope } from './chart-base.ts';
 import type { ChartSpec } from './chart-spec.ts';
-import { COLOURS, type Theme } from './colours.ts';
+import { COLOURS } from './colours.ts';
 
 /** The whole active recording before and behind the filter, every peak kept. */
-export function overviewChart(study: ChannelStudy, id: string, theme: Theme): ChartSpec {
-  const colours = COLOURS[theme];
+export function overviewChart(study: ChannelStudy, id: string): ChartSpec {
   const { before, after } = study.simulation;
   const { name, unit } = study.channel;
   const end = before.seconds[before.seconds.length - 1];
@@ -18,22 +17,20 @@ export function overviewChart(study: ChannelStudy, id: string, theme: Theme): Ch
     widthPx: 1120,
     heightPx: 300,
     config: curves(
-      colours,
       [
-        ...envelope({ label: 'before (smallest to largest)', ...before, colour: colours.before, order: 2 }),
-        ...envelope({ label: 'after', ...after, colour: colours.after, order: 1 }),
+        ...envelope({ label: 'before (smallest to largest)', ...before, colour: COLOURS.before, order: 2 }),
+        ...envelope({ label: 'after', ...after, colour: COLOURS.after, order: 1 }),
       ],
       {
-        x: linearAxis(colours, 'bottom', 'time from the first sample, s', { min: 0, max: end }),
-        y: linearAxis(colours, 'left', axisTitle(name, unit)),
+        x: linearAxis('bottom', 'time from the first sample, s', { min: 0, max: end }),
+        y: linearAxis('left', axisTitle(name, unit)),
       },
     ),
   };
 }
 
 /** A few seconds at full resolution. */
-export function insetChart(study: ChannelStudy, inset: Inset, id: string, theme: Theme): ChartSpec {
-  const colours = COLOURS[theme];
+export function insetChart(study: ChannelStudy, inset: Inset, id: string): ChartSpec {
   const { name, unit } = study.channel;
   const from = inset.seconds[0];
   const to = inset.seconds[inset.seconds.length - 1];
@@ -46,14 +43,13 @@ export function insetChart(study: ChannelStudy, inset: Inset, id: string, theme:
     widthPx: 552,
     heightPx: 270,
     config: curves(
-      colours,
       [
-        curve({ label: 'before', points: points(inset.before), colour: colours.before, width: 1, order: 2 }),
-        curve({ label: 'after', points: points(inset.after), colour: colours.after, width: 2.5, order: 1 }),
+        curve({ label: 'before', points: points(inset.before), colour: COLOURS.before, width: 1, order: 2 }),
+        curve({ label: 'after', points: points(inset.after), colour: COLOURS.after, width: 2.5, order: 1 }),
       ],
       {
-        x: linearAxis(colours, 'bottom', 'time, s', { min: from, max: to }),
-        y: linearAxis(colours, 'left', axisTitle(name, unit)),
+        x: linearAxis('bottom', 'time, s', { min: from, max: to }),
+        y: linearAxis('left', axisTitle(name, unit)),
       },
     ),
   };

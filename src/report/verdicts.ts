@@ -18,7 +18,7 @@ function channelVerdict({ channel, keep, advice }: ChannelStudy): Markup {
   const [low, high] = advice.cornerRangeHz;
   return html`<div class="verdict">
 <h3>${channel.name}<span class="badge ${advice.verdict}">${advice.verdict}</span></h3>
-<div class="corner">${hertz(advice.cornerHz)}<small>corner (−3 dB cutoff)</small><small>90 % interval ${hertz(low)} to ${hertz(high)}</small></div>
+<div class="corner">${hertz(advice.cornerHz)}<small>corner (−3 dB cutoff)</small><small>90 % interval ${hertz(low, 3)} to ${hertz(high, 3)}</small></div>
 <div>
 <p>${verdictSentence(channel.unit, keep, advice)}</p>
 <dl class="figures">${figures(channel.unit, advice).map(([name, value]) => html`<div><dt>${name}</dt><dd>${value}</dd></div>`)}</dl>

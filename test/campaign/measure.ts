@@ -95,8 +95,13 @@ function delayedError(noisy: Float64Array, signal: Float64Array, filter: Filter,
     }
     return sum / (filtered.length - skip);
   };
-  let low = 0;
-  let high = Math.min(skip - 2, (filter.order * recipe.rateHz) / filter.cornerHz);
+  const most = Math.min(skip - 3, Math.ceil((filter.order * recipe.rateHz) / filter.cornerHz));
+  const near = leastOf(
+    Array.from({ length: 25 }, (_, i) => (most * i) / 24),
+    error,
+  );
+  let low = Math.max(0, near - most / 24);
+  let high = near + most / 24;
   const golden = (Math.sqrt(5) - 1) / 2;
   for (let round = 0; round < 22; round++) {
     const a = high - golden * (high - low);
@@ -105,4 +110,8 @@ function delayedError(noisy: Float64Array, signal: Float64Array, filter: Filter,
     else low = a;
   }
   return error((low + high) / 2);
+}
+
+function leastOf(values: readonly number[], error: (value: number) => number): number {
+  return values.map((value) => ({ value, error: error(value) })).reduce((a, b) => (b.error < a.error ? b : a)).value;
 }

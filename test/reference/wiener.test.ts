@@ -12,7 +12,7 @@ function markov(lambda: number) {
   const signal = (f: number) => (2 * 2) / ((2 * Math.PI * f) ** 2 + 1);
   const active = spectrumOf({ ...options, density: (f) => signal(f) + 2 * noise });
   const quiet = spectrumOf({ ...options, density: () => 2 * noise });
-  return layEvidence(active, quiet, 1, { lowHz: 0, highHz: 2000 }, []);
+  return layEvidence(active, quiet, 1, { lowHz: 0, highHz: 2000 }, 2000, []);
 }
 
 describe('Wiener bound', () => {
@@ -25,7 +25,7 @@ describe('Wiener bound', () => {
     const options = { rateHz: 100, binHz: 0.001, dof: 100 };
     const active = spectrumOf({ ...options, density: (f) => (f < 10.0005 ? 2.2 : 0.2) });
     const quiet = spectrumOf({ ...options, density: () => 0.2 });
-    const { wienerPower } = layEvidence(active, quiet, 1, { lowHz: 0, highHz: 10.0005 }, []);
+    const { wienerPower } = layEvidence(active, quiet, 1, { lowHz: 0, highHz: 10.0005 }, 11, []);
     expect(wienerPower).toBeCloseTo(reference.flatBand.bound, 3);
   });
 });

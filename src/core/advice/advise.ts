@@ -56,12 +56,14 @@ export function advise(question: Question): Answer {
     ? { ...question.keepHz, source: 'given' }
     : { ...(found.keep ?? { lowHz: 0, highHz: 0 }), source: 'measured' };
   const inUse = found.inUse.filter((band) => band.lowHz > keep.highHz);
+  const signalHighHz = Math.max(keep.highHz, question.keepHz ? 0 : found.limits.highHz);
   const contest: Contest = {
     limits,
     keepHighHz: keep.highHz,
     firstLineHz: question.rejectHz ?? lines.find((line) => line.frequencyHz > keep.highHz)?.frequencyHz ?? null,
     highestCornerHz: HIGHEST_CORNER_SHARE * Math.min(quietSpectrum.rateHz, activeSpectrum.rateHz),
-    evidence: layEvidence(activeSpectrum, quietSpectrum, gainPower, keep, inUse),
+    nominal: question.keepHz !== null && question.rejectHz !== null,
+    evidence: layEvidence(activeSpectrum, quietSpectrum, gainPower, keep, signalHighHz, inUse),
   };
   const field = rivals(contest);
   const within = lines.filter((line) => line.frequencyHz <= keep.highHz);
@@ -70,7 +72,15 @@ export function advise(question: Question): Answer {
     field,
     within.map((line) => (gainPower * line.amplitude ** 2) / 2),
   );
-  const resampled = { quietLevels, activeLevels, noiseGainPower: gainPower, keep, excessLimits: found.limits, inUse };
+  const resampled = {
+    quietLevels,
+    activeLevels,
+    noiseGainPower: gainPower,
+    keep,
+    excessLimits: found.limits,
+    signalHighHz,
+    inUse,
+  };
   return {
     quietSpectrum,
     activeSpectrum,

@@ -15,6 +15,8 @@ export interface Resampled {
   readonly keep: KeepBand;
   /** Limits within which the edge is looked for again, Hz. */
   readonly excessLimits: Band;
+  /** As far as any signal reaches, Hz. */
+  readonly signalHighHz: number;
   readonly inUse: readonly Band[];
 }
 
@@ -55,6 +57,13 @@ function resample(from: Resampled, contest: Contest, uniform: () => number): Con
           from.excessLimits,
         );
   const keep = { ...from.keep, highHz };
-  const evidence = layEvidence(active, quiet, from.noiseGainPower, keep, from.inUse);
+  const evidence = layEvidence(
+    active,
+    quiet,
+    from.noiseGainPower,
+    keep,
+    Math.max(highHz, from.signalHighHz),
+    from.inUse,
+  );
   return { ...contest, keepHighHz: highHz, evidence };
 }

@@ -1,8 +1,5 @@
 import type { Band } from '../spectrum/spectrum.ts';
 
-/** Interval narrower than this ratio is below what parts of 5 % can hold: any corner in it serves. */
-const NARROW_RATIO = 1.1;
-
 /**
  * Corner in Hz with the least error within `allowed`: a scan in equal ratios, then golden-section search around its best
  * (Kiefer 1953). `error` may be any continuous function of the corner.
@@ -44,7 +41,7 @@ export function leastErrorCorner(allowed: Band, error: (cornerHz: number) => num
 
 /**
  * The roundest corner near `cornerHz` that stays within `allowed` and costs no more than `tolerance` of error power:
- * the optimum is flat, and people build and say round numbers. Within a narrow interval any corner serves.
+ * the optimum is flat, and people build and say round numbers.
  */
 export function roundCorner(
   cornerHz: number,
@@ -52,7 +49,6 @@ export function roundCorner(
   error: (cornerHz: number) => number,
   tolerance: number,
 ): number {
-  const narrow = allowed.highHz <= allowed.lowHz * NARROW_RATIO;
   const most = error(cornerHz) + tolerance;
   const decade = 10 ** Math.floor(Math.log10(cornerHz));
   for (const step of [decade, decade / 2, decade / 10, decade / 20, decade / 100]) {
@@ -60,7 +56,7 @@ export function roundCorner(
     const serving = [below - 1, below, below + 1, below + 2]
       .map((count) => Number((count * step).toPrecision(12)))
       .filter((corner) => corner > 0 && corner >= allowed.lowHz && corner <= allowed.highHz)
-      .filter((corner) => narrow || error(corner) <= most)
+      .filter((corner) => error(corner) <= most)
       .sort((a, b) => Math.abs(a - cornerHz) - Math.abs(b - cornerHz));
     if (serving.length > 0) return serving[0];
   }

@@ -7,7 +7,7 @@ import { densityAt } from './density.ts';
  */
 export interface Evidence {
   readonly frequencyHz: Float64Array;
-  /** Power of the active recording. */
+  /** Power of signal and noise together: measured where the signal is, the noise alone elsewhere. */
   readonly active: Float64Array;
   /** Power of the noise in use. */
   readonly noise: Float64Array;
@@ -28,13 +28,16 @@ const POINTS_PER_OCTAVE = 24;
 
 /**
  * Lays the evidence out. Noise in use is the quiet density times `noiseGainPower`; within `inUse` bands all of the active
- * power is noise. Active and quiet keep points of their own, so that neither is resampled; the points are then condensed.
+ * power is noise. The active spectrum speaks up to `signalHighHz`, as far as any signal reaches; beyond, what active and
+ * quiet differ by is chance, and on strong lines more than all that a filter leaves. Active and quiet keep points of their
+ * own, so that neither is resampled; the points are then condensed.
  */
 export function layEvidence(
   active: Spectrum,
   quiet: Spectrum,
   noiseGainPower: number,
   keep: Band,
+  signalHighHz: number,
   inUse: readonly Band[],
 ): Evidence {
   const points = new Condenser();
@@ -43,6 +46,7 @@ export function layEvidence(
   active.frequencyHz.forEach((f, i) => {
     const power = active.density[i] * active.widthHz[i];
     const onlyInUse = inside(inUse, f);
+    if (!onlyInUse && f > signalHighHz) return;
     const noise = noiseGainPower * densityAt(quiet, f) * active.widthHz[i];
     const signal = !onlyInUse && f >= keep.lowHz && f <= keep.highHz ? Math.max(0, power - noise) : 0;
     if (signal > 0) wienerPower += (signal * noise) / (signal + noise);
@@ -53,7 +57,7 @@ export function layEvidence(
     if (inside(inUse, f)) return;
     const noise = noiseGainPower * quiet.density[i] * quiet.widthHz[i];
     if (f >= keep.lowHz && f <= keep.highHz) noiseInBandPower += noise;
-    points.add(f, 0, noise, 0);
+    points.add(f, f > signalHighHz ? noise : 0, noise, 0);
   });
   return { ...points.result(), noiseInBandPower, wienerPower };
 }
@@ -66,8 +70,8 @@ class Condenser {
   >();
 
   add(frequencyHz: number, active: number, noise: number, signal: number): void {
-    // Active and noise points stay apart: their centres differ within a step.
-    const step = Math.floor(Math.log2(frequencyHz) * POINTS_PER_OCTAVE) * 2 + (active > 0 ? 0 : 1);
+    // What is measured in use and what is known from quiet stay apart: their centres differ within a step.
+    const step = Math.floor(Math.log2(frequencyHz) * POINTS_PER_OCTAVE) * 2 + (active === noise ? 0 : 1);
     const sum = this.sums.get(step) ?? [0, 0, 0, 0, 0];
     const weight = Math.max(active, noise);
     sum[0] += frequencyHz * weight;

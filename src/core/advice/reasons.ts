@@ -111,9 +111,11 @@ function costSentence({ choice: { rival }, contest, unit }: Findings): string {
   return `Noise in use falls from ${quantity(before, unit)} to ${quantity(rival.noiseAfterRms, unit)} RMS; the price is a droop of ${decibels(rival.droopDb)} at the keep-band edge, and ${step}.`;
 }
 
-function boundSentence({ choice: { rival, overlap }, contest }: Findings): string {
-  if (overlap === 'no signal' || contest.evidence.wienerPower <= 0) return '';
-  return `Its expected error is ${significant(rival.wienerRatio, 2)} times the Wiener bound, the least that any linear filter could reach with all past and future samples.`;
+function boundSentence({ choice: { rival, overlap }, contest, unit }: Findings): string {
+  const { wienerPower, signalPower } = contest.evidence;
+  if (overlap === 'no signal' || wienerPower <= 0) return '';
+  const rms = (power: number) => quantity(Math.sqrt(power), unit, 2);
+  return `Against the delayed signal an error of ${rms(rival.errorPower)} RMS is expected, ${percent(Math.sqrt(rival.errorPower / signalPower))} of the signal's RMS; no linear filter, knowing all past and future, comes below ${rms(wienerPower)} (Wiener bound).`;
 }
 
 function inUseSentences({ inUse, noiseGainPower }: Findings): string[] {

@@ -16,6 +16,8 @@ export interface Contest {
   readonly firstLineHz: number | null;
   /** Highest corner that a digital filter at the recording's rate can have, Hz. */
   readonly highestCornerHz: number;
+  /** True where a person gave both edges: round numbers stand for themselves, and a round corner between them is the answer. */
+  readonly nominal: boolean;
   readonly evidence: Evidence;
 }
 
@@ -30,6 +32,8 @@ export const CONTESTANTS: readonly { readonly family: Family; readonly order: nu
 
 /** Share of the noise power that a rounder corner may cost. */
 const ROUNDING_COST = 0.0025;
+/** What limits given by hand leave within this ratio is below what parts hold: there any corner serves. */
+const NARROW_RATIO = 1.1;
 /** Slack on limits for rounding in the last digits, dB. */
 const LIMIT_SLACK_DB = 1e-6;
 
@@ -37,7 +41,7 @@ const LIMIT_SLACK_DB = 1e-6;
  * Corners that the limits leave to a family and order, Hz: from the lowest that keeps the droop to the highest that keeps
  * the rejection. low > high where no corner keeps both.
  */
-export function allowedCorners(contest: Contest, family: Family, order: number): Band {
+export function allowedCorners(contest: Omit<Contest, 'evidence' | 'nominal'>, family: Family, order: number): Band {
   const shape = { shape: 'low-pass', family, order } as const;
   const { keepHighHz, firstLineHz, limits, highestCornerHz } = contest;
   const lowHz = keepHighHz > 0 ? cornerForGain(shape, keepHighHz, limits.droopDb) : highestCornerHz / 1e4;
@@ -49,7 +53,7 @@ export function allowedCorners(contest: Contest, family: Family, order: number):
 export function bestCorner(contest: Contest, family: Family, order: number): number {
   const sections = prototypeSections(family, order);
   const error = (corner: number) => expectedError(contest.evidence, sections, corner).errorPower;
-  return leastErrorCorner(ordered(allowedCorners(contest, family, order)), error);
+  return leastErrorCorner(searched(contest, allowedCorners(contest, family, order)), error);
 }
 
 /** Every contestant at its best corner, in the order of `CONTESTANTS`. */
@@ -58,9 +62,11 @@ export function rivals(contest: Contest): Rival[] {
     const sections = prototypeSections(family, order);
     const allowedHz = allowedCorners(contest, family, order);
     const error = (corner: number) => expectedError(contest.evidence, sections, corner).errorPower;
-    const best = leastErrorCorner(ordered(allowedHz), error);
-    const tolerance = ROUNDING_COST * contest.evidence.noisePower;
-    const cornerHz = roundCorner(best, ordered(allowedHz), error, tolerance);
+    const within = searched(contest, allowedHz);
+    const best = leastErrorCorner(within, error);
+    const narrow = contest.nominal && allowedHz.highHz <= allowedHz.lowHz * NARROW_RATIO;
+    const tolerance = narrow ? Number.POSITIVE_INFINITY : ROUNDING_COST * contest.evidence.noisePower;
+    const cornerHz = roundCorner(best, within, error, tolerance);
     return judge(contest, { shape: 'low-pass', family, order, cornerHz }, allowedHz);
   });
 }
@@ -89,6 +95,7 @@ function judge(contest: Contest, filter: Filter, allowedHz: Band): Rival {
   };
 }
 
-function ordered({ lowHz, highHz }: Band): Band {
-  return { lowHz: Math.min(lowHz, highHz), highHz: Math.max(lowHz, highHz) };
+/** Where to look for the corner: between the limits, also where they contradict each other, and no higher than the rate carries. */
+function searched({ highestCornerHz }: Contest, { lowHz, highHz }: Band): Band {
+  return { lowHz: Math.min(lowHz, highHz), highHz: Math.min(highestCornerHz, Math.max(lowHz, highHz)) };
 }

@@ -18,8 +18,8 @@ function contest(options: {
   const disturbed = (f: number) => noise + (firstLineHz !== null && Math.abs(f - firstLineHz) < 0.02 ? 100 * noise : 0);
   const active = spectrumOf({ ...grid, density: (f) => (f <= keepHighHz ? 1 : 0) + disturbed(f) });
   const quiet = spectrumOf({ ...grid, density: disturbed });
-  const evidence = layEvidence(active, quiet, 1, { lowHz: 0, highHz: keepHighHz }, []);
-  return { limits: LIMITS, keepHighHz, firstLineHz, highestCornerHz: 0.45 * rateHz, evidence };
+  const evidence = layEvidence(active, quiet, 1, { lowHz: 0, highHz: keepHighHz }, keepHighHz, []);
+  return { limits: LIMITS, keepHighHz, firstLineHz, highestCornerHz: 0.45 * rateHz, nominal: true, evidence };
 }
 
 describe('one pole, keep 1 Hz, reject 30 Hz at 20 dB (common practice: corner 30/√99 = 3.015 Hz, half a decibel lost at 1 Hz)', () => {
