@@ -40,14 +40,12 @@ export class Clock {
   private offset = 0;
   private filledInRow = 0;
   private row = 0;
-  private readonly lastValues: Float64Array;
 
   /** `counting` is for recordings without stamps: a row is a period. */
-  constructor(file: string, rule: TimeRule, columns: number, counting: boolean) {
+  constructor(file: string, rule: TimeRule, counting: boolean) {
     this.file = file;
     this.rule = rule;
     this.counting = counting;
-    this.lastValues = new Float64Array(columns);
   }
 
   /** Places a batch's rows. Throws UserError('input') where time runs backwards. */
@@ -58,7 +56,7 @@ export class Clock {
     }
     let kept = 0;
     for (let i = 0; i < batch.length; i++) {
-      const seconds = this.secondsOf(batch, i, kept);
+      const seconds = this.secondsOf(batch, i);
       if (Number.isNaN(seconds)) continue;
       this.last = seconds;
       batch.stamps[kept] = seconds;
@@ -68,15 +66,11 @@ export class Clock {
       }
       kept++;
     }
-    if (kept > 0)
-      batch.values.forEach((column, c) => {
-        this.lastValues[c] = column[kept - 1];
-      });
     batch.length = kept;
   }
 
-  /** Time of row `i`, seconds; NaN where the row is to be dropped. `kept` rows of the batch stand before it. */
-  private secondsOf(batch: RowBatch, i: number, kept: number): number {
+  /** Time of row `i`, seconds; NaN where the row is to be dropped. */
+  private secondsOf(batch: RowBatch, i: number): number {
     const stamp = batch.stamps[i];
     if (Number.isNaN(stamp)) return this.fill(batch.lines[i]);
     if (Number.isNaN(this.first)) {
@@ -85,7 +79,7 @@ export class Clock {
     }
     let seconds = (stamp - this.first) / this.rule.unitsPerSecond + this.offset;
     if (seconds < this.lastRead) seconds = this.unwrapped(seconds, batch.lines[i]);
-    const repeats = seconds === this.lastRead && this.filledInRow === 0 && this.isRepeat(batch, i, kept);
+    const repeats = seconds === this.lastRead && this.filledInRow === 0 && !this.rule.coarse;
     this.lastRead = seconds;
     this.filledInRow = 0;
     if (!repeats) return Math.max(seconds, this.last);
@@ -101,14 +95,6 @@ export class Clock {
     }
     note(this.repairs.filled, line);
     return this.last + this.rule.periodSeconds;
-  }
-
-  /** A row that repeats a stamp is no sample: its values repeat too, or the stamps are too fine for two samples at one time. */
-  private isRepeat(batch: RowBatch, i: number, kept: number): boolean {
-    const { coarse, resolutionSeconds, periodSeconds } = this.rule;
-    if (coarse) return false;
-    if (resolutionSeconds < 0.5 * periodSeconds) return true;
-    return batch.values.every((column, c) => Object.is(column[i], kept > 0 ? column[kept - 1] : this.lastValues[c]));
   }
 
   private unwrapped(seconds: number, line: number): number {

@@ -119,19 +119,34 @@ function cost(rateHz: number): string {
 
 function stampNotes({ survey }: Findings): Note[] {
   const { repeated, filled, lost, wrapped } = survey.repairs;
-  const sentence = (repair: Repair, text: (what: string) => string) =>
-    repair.count === 0 ? [] : [warning(text(`${plural(repair.count, 'row')}, the first in row ${repair.firstLine},`))];
+  const sentence = ({ count: number, firstLine }: Repair, one: string, many: string) => {
+    if (number === 0) return [];
+    return [
+      warning(
+        number === 1 ? `Row ${firstLine} ${one}.` : `${count(number)} rows, the first being ${firstLine}, ${many}.`,
+      ),
+    ];
+  };
+  const times = wrapped.count === 1 ? 'once, in' : `${count(wrapped.count)} times, first in`;
   return [
-    ...sentence(repeated, (rows) => `${rows} repeated the time stamp before and were dropped.`),
-    ...sentence(filled, (rows) => `${rows} had no time stamp and were placed one period behind the row before.`),
-    ...sentence(lost, (rows) => `${rows} had no time stamp and could not be placed; they were dropped.`),
+    ...sentence(
+      repeated,
+      'repeated the time stamp before and was dropped',
+      'repeated the time stamp before and were dropped',
+    ),
+    ...sentence(
+      filled,
+      'had no time stamp and was placed one period behind the row before',
+      'had no time stamp and were placed one period behind the row before',
+    ),
+    ...sentence(
+      lost,
+      'had no time stamp, could not be placed and was dropped',
+      'had no time stamp, could not be placed and were dropped',
+    ),
     ...(wrapped.count === 0
       ? []
-      : [
-          note(
-            `The clock started again from zero ${wrapped.count === 1 ? 'once' : `${count(wrapped.count)} times`}, first in row ${wrapped.firstLine}; the time was carried on.`,
-          ),
-        ]),
+      : [note(`The clock started again from zero ${times} row ${wrapped.firstLine}; the time was carried on.`)]),
   ];
 }
 

@@ -104,7 +104,7 @@ function newLane({ layout, quoted }: Reading, capacity: number): RowLane {
 }
 
 function newClock({ layout, time }: Reading, rule: TimeRule): Clock {
-  return new Clock(layout.file, rule, layout.valueFields.length, time.kind === 'none');
+  return new Clock(layout.file, rule, time.kind === 'none');
 }
 
 async function* laneBatches(

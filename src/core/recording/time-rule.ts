@@ -25,15 +25,18 @@ export interface Opening {
 
 const COUNTER_BITS = [16, 24, 31, 32];
 const DAY_SECONDS = 86_400;
-/** Large steps that are needed to tell rounded stamps from lost samples. */
+/** Share of repeated stamps that no logger writes twice by mistake. */
+const MANY_REPEATS = 0.2;
+/** Odd steps that are needed to tell rounded stamps from lost samples. */
 const ENOUGH_STEPS = 8;
 
 /** Learns period, resolution and gap limit from the opening rows; `clock` says that the stamps are times of day. */
-export function learnTimeRule({ stamps, same }: Opening, unitsPerSecond: number, clock: boolean): TimeRule {
-  const { steps, coarse } = openingSteps(stamps, same);
+export function learnTimeRule(opening: Opening, unitsPerSecond: number, clock: boolean): TimeRule {
+  const steps = openingSteps(opening.stamps);
   const moving = steps.filter((step) => step > 0);
   const step = median(moving);
-  const written = decimalResolution(stamps);
+  const written = decimalResolution(opening.stamps);
+  const coarse = areCoarse(opening, steps, Math.max(written, step));
   const resolution = coarse ? Math.max(written, step) : written;
   const { period, gap } = periodAndGap(coarse ? steps : moving, step, resolution);
   const integer = written >= 1;
@@ -60,19 +63,24 @@ export function evenRule(rateHz: number): TimeRule {
   };
 }
 
-/** Steps of zero or more. Stamps are coarse where more repeats differ in their values than not, and they are no rarity. */
-function openingSteps(stamps: Float64Array, same: Uint8Array): { steps: Float64Array; coarse: boolean } {
-  const steps: number[] = [];
+/** Steps of zero or more between the stamps that are there. */
+function openingSteps(stamps: Float64Array): Float64Array {
+  const there = stamps.filter((stamp) => !Number.isNaN(stamp));
+  return there
+    .subarray(1)
+    .map((stamp, i) => stamp - there[i])
+    .filter((step) => step >= 0);
+}
+
+/**
+ * Stamps are coarse where more repeats differ in their values than not, and where there are many of them, or the stamps keep to a
+ * straight line within `resolution`, as rounded ones do and rows written twice do not.
+ */
+function areCoarse({ stamps, same }: Opening, steps: Float64Array, resolution: number): boolean {
   let [differing, equal] = [0, 0];
-  let last = Number.NaN;
-  stamps.forEach((stamp, row) => {
-    if (Number.isNaN(stamp)) return;
-    const step = stamp - last;
-    last = stamp;
-    if (step >= 0) steps.push(step);
-    if (step === 0) same[row] ? equal++ : differing++;
-  });
-  return { steps: Float64Array.from(steps), coarse: differing > equal && differing > 0.002 * steps.length };
+  for (let row = 1; row < stamps.length; row++) if (stamps[row] === stamps[row - 1]) same[row] ? equal++ : differing++;
+  if (differing <= equal || differing < ENOUGH_STEPS) return false;
+  return differing > MANY_REPEATS * steps.length || residualRange(steps, 2.5 * resolution) <= 1.5 * resolution;
 }
 
 /** The largest power of ten of which all stamps are multiples, units of the stamps: the last digit written. 0 where it is beyond a double. */

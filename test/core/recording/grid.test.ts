@@ -97,20 +97,30 @@ describe('resampling of uneven stamps', () => {
 
 describe('cubicWeights', () => {
   const times = fc
-    .array(fc.oneof(fc.constantFrom(1e-6, 0.01), fc.double({ min: 0.01, max: 1, noNaN: true })), {
-      minLength: 3,
-      maxLength: 3,
-    })
+    .array(
+      fc.oneof(
+        fc.constantFrom(1e-6, 0.01),
+        fc.integer({ min: 10, max: 1000 }).map((n) => n / 1000),
+      ),
+      {
+        minLength: 3,
+        maxLength: 3,
+      },
+    )
     .map(([a, b, c]) => Float64Array.of(0, a, a + b, a + b + c));
 
   it('sum to one and never amplify by more than two', () => {
     fc.assert(
-      fc.property(times, fc.double({ min: 0, max: 1, noNaN: true }), (at, share) => {
-        const weights = new Float64Array(4);
-        cubicWeights(at, 0, at[1] + share * (at[2] - at[1]), weights);
-        expect(weights.reduce((sum, weight) => sum + weight)).toBeCloseTo(1, 9);
-        expect(weights.reduce((sum, weight) => sum + Math.abs(weight), 0)).toBeLessThanOrEqual(2 + 1e-12);
-      }),
+      fc.property(
+        times,
+        fc.integer({ min: 0, max: 64 }).map((n) => n / 64),
+        (at, share) => {
+          const weights = new Float64Array(4);
+          cubicWeights(at, 0, at[1] + share * (at[2] - at[1]), weights);
+          expect(weights.reduce((sum, weight) => sum + weight)).toBeCloseTo(1, 9);
+          expect(weights.reduce((sum, weight) => sum + Math.abs(weight), 0)).toBeLessThanOrEqual(2 + 1e-12);
+        },
+      ),
     );
   });
 

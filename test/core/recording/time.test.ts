@@ -86,7 +86,7 @@ describe('kinds of time, all of them 100 Hz', () => {
     const night = await read(stamped('clock', 200, (i) => clock(86_399_000 + 10 * i)));
     expect(night.facts).toMatchObject({ rateHz: 100, durationSeconds: 2, gaps: [] });
     expect(night.facts.notes[0].text).toBe(
-      'The clock started again from zero once, first in row 102; the time was carried on.',
+      'The clock started again from zero once, in row 102; the time was carried on.',
     );
     for (const bits of [16, 32]) {
       const { facts } = await read(stamped('t_us', 40_000, (i) => (2 ** bits - 5000 + 10 * i) % 2 ** bits));
@@ -149,8 +149,24 @@ describe('gaps, repeats and rows without a stamp', () => {
     expect(runs).toEqual(clean.runs);
     expect(facts).toMatchObject({ rows: 202, gaps: [], longestRunSamples: 200 });
     expect(facts.notes.map(({ text }) => text)).toEqual([
-      '2 rows, the first in row 52, repeated the time stamp before and were dropped.',
+      '2 rows, the first being 52, repeated the time stamp before and were dropped.',
     ]);
+  });
+
+  it('drops rows of other values too, where the stamps are even without them', async () => {
+    const many = stamped('t [s]', 2000, (i) => (i / 100).toFixed(2))
+      .trim()
+      .split('\n');
+    const random = many.flatMap((row, i) =>
+      i > 0 && (Math.imul(i, 2654435761) >>> 0) % 53 === 3 ? [row, `${row}5`] : [row],
+    );
+    expect(random.length).toBeGreaterThan(2020);
+    expect((await read(random.join('\n'))).facts).toMatchObject({ rateHz: 100, longestRunSamples: 2000 });
+    const rows = stamped('t [s]', 200, (i) => (i / 100).toFixed(4)).split('\n');
+    rows.splice(81, 0, '0.7900,99');
+    const { facts, runs } = await read(rows.join('\n'));
+    expect(Math.max(...runs[0].channels[0])).toBeLessThan(3);
+    expect(facts.notes.map(({ text }) => text)).toEqual(['Row 82 repeated the time stamp before and was dropped.']);
   });
 
   it('keeps every row once where all are written twice', async () => {
@@ -170,7 +186,7 @@ describe('gaps, repeats and rows without a stamp', () => {
     );
     expect(runs).toEqual(clean.runs);
     expect(facts.notes.map(({ text }) => text)).toEqual([
-      '2 rows, the first in row 62, had no time stamp and were placed one period behind the row before.',
+      '2 rows, the first being 62, had no time stamp and were placed one period behind the row before.',
     ]);
   });
 
@@ -203,12 +219,12 @@ describe('stamps coarser than they should be', () => {
   it.each([
     [3000, 1000],
     [1100, 1000],
+    [1004, 1000],
     [980.4, 1000],
     [833.3, 1000],
     [640, 1000],
     [412.7, 1000],
     [104.2, 100],
-    [1000.2, 1000],
   ])('spreads %d Hz written in 1/%d s, as even, without a gap', async (rateHz, perSecond) => {
     const { facts, runs } = await read(
       stamped('t [s]', 4000, (i) => (Math.floor((i * perSecond) / rateHz + 0.3) / perSecond).toFixed(3)),
@@ -217,6 +233,7 @@ describe('stamps coarser than they should be', () => {
     expect(facts).toMatchObject({ resampled: false, longestRunSamples: 4000 });
     expect(Math.abs(facts.rateHz / rateHz - 1)).toBeLessThan(3e-4);
     expect(runs[0].channels[0]).toEqual(Array.from({ length: 4000 }, (_, i) => wave(i)));
+    expect(runs[0].startSeconds).toBe(0);
   });
 
   it.each([
