@@ -22,8 +22,11 @@ export function summary(study: Study, files: StudyFiles, ink: Ink): string {
 
 /** Findings that a user should see before trusting the advice, a line each; for stderr. */
 export function warnings(study: Study): string[] {
-  const all = [...study.quiet.notes, ...study.active.notes, ...study.notes, ...study.channels.flatMap((c) => c.notes)];
-  return all.filter((note) => note.severity === 'warning').map((note) => note.text);
+  const ofFile = ({ file, notes }: RecordingFacts) => notes.map((note) => ({ ...note, text: `${file}: ${note.text}` }));
+  const ofPair = [...study.notes, ...study.channels.flatMap((channel) => channel.notes)];
+  return [...ofFile(study.quiet), ...ofFile(study.active), ...ofPair]
+    .filter((note) => note.severity === 'warning')
+    .map((note) => note.text);
 }
 
 function recordingLine(role: string, facts: RecordingFacts, ink: Ink): string {

@@ -2,13 +2,14 @@ import type { Advice } from './advice/advice.ts';
 import { type Answer, advise } from './advice/advise.ts';
 import { expectedError } from './advice/expected-error.ts';
 import { reasons } from './advice/reasons.ts';
-import { decibels, percent, seconds } from './figure.ts';
+import { decibels, hertz, percent, seconds, significant } from './figure.ts';
 import { discretise } from './filter/discretise.ts';
 import { prototypeSections } from './filter/families.ts';
 import type { DiscreteFilter } from './filter/filter.ts';
 import { type ActiveEvidence, listenActive, listenQuiet, type QuietEvidence } from './listening.ts';
 import { type PairedChannel, pairChannels } from './pair.ts';
-import type { Note, Recording } from './recording/recording.ts';
+import { interpolationLossDb } from './recording/interpolation.ts';
+import type { Note, Recording, RecordingFacts } from './recording/recording.ts';
 import { chooseInsets, type InsetPlace } from './simulation/inset.ts';
 import { type FilteredSink, simulateOnActive } from './simulation/on-active.ts';
 import { type MeasuredNoise, simulateOnQuiet } from './simulation/on-quiet.ts';
@@ -64,7 +65,7 @@ export async function study({ quiet, active, settings, version, sink }: StudyInp
     sink,
   );
   const channels = worked.map((work, i) => ({
-    ...describe(work, measured[i], active.facts.rateHz),
+    ...describe(work, measured[i], active.facts),
     filteredSpectrum: simulated[i].spectrum,
     discrete: discrete[i],
     simulation: simulated[i].simulation,
@@ -109,7 +110,8 @@ async function workOut(
 
 type Described = Omit<ChannelStudy, 'filteredSpectrum' | 'discrete' | 'simulation'>;
 
-function describe(work: Worked, measured: MeasuredNoise, rateHz: number): Described {
+function describe(work: Worked, measured: MeasuredNoise, { rateHz, resampled }: RecordingFacts): Described {
+  const resampledRateHz = resampled ? rateHz : null;
   const { answer, lines } = work;
   const { quietSpectrum, activeSpectrum, keep, inUse, rivals } = answer;
   return {
@@ -125,7 +127,7 @@ function describe(work: Worked, measured: MeasuredNoise, rateHz: number): Descri
     inUse,
     advice: adviceOf(work, measured, rateHz),
     rivals,
-    notes: channelNotes(work),
+    notes: channelNotes(work, resampledRateHz),
   };
 }
 
@@ -158,7 +160,7 @@ function adviceOf({ answer, lines, paired }: Worked, measured: MeasuredNoise, ra
   };
 }
 
-function channelNotes({ paired, quiet, answer }: Worked): Note[] {
+function channelNotes({ paired, quiet, answer }: Worked, resampledRateHz: number | null): Note[] {
   const notes: Note[] = [];
   const { name } = paired.channel;
   const { usedSeconds, totalSeconds } = quiet.part;
@@ -173,6 +175,11 @@ function channelNotes({ paired, quiet, answer }: Worked): Note[] {
       severity: 'warning',
       text: `Channel "${name}" is louder in the quiet recording than in the active one (by ${decibels(10 * Math.log10(ratio))}): are the two swapped, or was quiet not quiet?`,
     });
+  if (resampledRateHz !== null && answer.keep.highHz > 0)
+    notes.push({
+      severity: 'note',
+      text: `Channel "${name}": interpolating the uneven samples costs up to ${significant(interpolationLossDb(answer.keep.highHz / resampledRateHz), 2)} dB at the keep-band edge of ${hertz(answer.keep.highHz, 3)}.`,
+    });
   const inBand = answer.contest.evidence.noiseInBandPower / answer.contest.evidence.signalPower;
   if (Number.isFinite(inBand) && inBand > 0.01)
     notes.push({
@@ -186,8 +193,8 @@ function totalPower({ density, widthHz }: Answer['quietSpectrum']): number {
   return density.reduce((sum, value, i) => sum + value * widthHz[i], 0);
 }
 
-/** Some eight periods of the keep-band edge, so that a movement can be followed by eye; in samples. */
+/** Some eight periods of the keep-band edge, so that a movement can be followed by eye, but no fewer samples than make a picture. */
 function insetSamples({ keep, choice }: Answer, rateHz: number): number {
   const slowestHz = keep.highHz > 0 ? keep.highHz : choice.rival.cornerHz;
-  return Math.round(Math.max(64, Math.min(4000, (8 / slowestHz) * rateHz)));
+  return Math.round(Math.max(256, Math.min(4000, (8 / slowestHz) * rateHz)));
 }

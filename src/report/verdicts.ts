@@ -10,7 +10,7 @@ export function verdictSection(study: Study): Markup {
   return html`<section aria-labelledby="verdict">
 <h2 id="verdict">Which filter</h2>
 ${study.channels.map(channelVerdict)}
-${warnings.map((note) => html`<p class="warning"><strong>Look at this first:</strong> ${note.text}</p>\n`)}
+${warnings.map((note) => html`<p class="warning"><strong>Mind this:</strong> ${note.text}</p>\n`)}
 </section>`;
 }
 

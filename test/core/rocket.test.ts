@@ -38,9 +38,11 @@ describe('pad.csv against flight.csv, with no option', () => {
   });
 
   it('says which part of the quiet recording was used', () => {
-    for (const { quietPart } of found.channels) {
+    for (const { quietPart } of found.channels.filter(({ channel }) => channel.unit === 'g')) {
       expect(quietPart.usedSeconds).toBeLessThan(quietPart.totalSeconds);
-      expect(quietPart.stretches.every((stretch) => stretch.toSeconds < 20)).toBe(true);
+      // The last half second of the file is already the start of the motion.
+      const end = Math.max(...quietPart.stretches.map((stretch) => stretch.toSeconds));
+      expect(end).toBeLessThan(found.quiet.durationSeconds - 0.4);
     }
   });
 });

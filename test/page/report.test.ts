@@ -4,7 +4,7 @@ import { accessibilityFaults, overflowing } from './faults.ts';
 import { pageTest } from './open-page.ts';
 import { VIEWS } from './views.ts';
 
-const report = fileURLToPath(new URL('../../reports/example/report.html', import.meta.url));
+const report = fileURLToPath(new URL('../../reports/example/cabin-active.report.html', import.meta.url));
 
 describe.each(VIEWS)('the example report, $width pixels wide, $scheme', (view) => {
   pageTest('asks for nothing and complains of nothing', async ({ openPage }) => {

@@ -27,6 +27,7 @@ export function reasons(findings: Findings): string[] {
     intervalSentence(findings),
     ...overlapSentences(findings),
     costSentence(findings),
+    gainSentence(findings),
     boundSentence(findings),
     ...inUseSentences(findings),
   ].filter((sentence) => sentence !== '');
@@ -100,6 +101,13 @@ function overlapSentences({ choice, lines, keep, contest, unit }: Findings): str
         cures,
       ];
     }
+    case 'band full': {
+      const { noiseInBandPower, signalPower } = contest.evidence;
+      return [
+        `The signal reaches up to ${hertz(keep.highHz, 3)}, all but what the sampling rate carries: no low-pass has room above it. Noise within it holds ${percent(noiseInBandPower / signalPower)} of the signal's power; leaving the recording unfiltered costs no more than that.`,
+        'What could still be done: sample faster, or name the part of the band that matters with --keep.',
+      ];
+    }
     case 'line too near':
       return [`The first noise line stands too near the keep band for any filter here to part them.`, cures];
   }
@@ -109,6 +117,15 @@ function costSentence({ choice: { rival }, contest, unit }: Findings): string {
   const before = Math.sqrt(contest.evidence.noisePower);
   const step = `a step arrives ${seconds(rival.delaySeconds)} late and is within 1 % after ${seconds(rival.settlingSeconds)}`;
   return `Noise in use falls from ${quantity(before, unit)} to ${quantity(rival.noiseAfterRms, unit)} RMS; the price is a droop of ${decibels(rival.droopDb)} at the keep-band edge, and ${step}.`;
+}
+
+/** From this share of the noise left on, a filter is hardly worth its delay: half the power. */
+const HARDLY_LESS = Math.SQRT1_2;
+
+function gainSentence({ choice: { rival }, contest }: Findings): string {
+  const left = rival.noiseAfterRms / Math.sqrt(contest.evidence.noisePower);
+  if (!(left > HARDLY_LESS)) return '';
+  return `That is little: ${percent(left)} of the noise stays, as any lower corner would take more from the signal than from the noise. These recordings call for hardly any filter.`;
 }
 
 function boundSentence({ choice: { rival, overlap }, contest, unit }: Findings): string {

@@ -18,7 +18,7 @@ export function verdictSentence(unit: string, keep: KeepBand, advice: Advice): s
       return `No filter keeps every limit; the least loss is a ${name}: ${kept}, ${rejected}; ${noise}.`;
     case 'inseparable':
       return keep.highHz > 0
-        ? `Signal and noise cannot be parted by a low-pass; the least harm is a ${name}: ${kept}, ${rejected}; ${noise}.`
+        ? `No low-pass parts signal and noise here; the least harm is a ${name}: ${kept}, ${rejected}; ${noise}.`
         : `The active recording shows no signal above the quiet one, so no corner can be defended; a ${name} would take noise from ${quantity(advice.noiseBeforeRms, unit)} to ${quantity(advice.noiseAfterRms, unit)} RMS.`;
   }
 }

@@ -15,7 +15,7 @@ export interface Choice {
   readonly rival: Rival;
   readonly verdict: Verdict;
   /** Why no low-pass can part signal and noise; null unless inseparable. */
-  readonly overlap: 'no signal' | 'line within' | 'noise within' | 'line too near' | null;
+  readonly overlap: 'no signal' | 'line within' | 'noise within' | 'line too near' | 'band full' | null;
 }
 
 /**
@@ -27,7 +27,7 @@ export function choose(contest: Contest, rivals: readonly Rival[], linesWithin: 
   const simplest = Math.min(...meeting.map((rival) => rival.order));
   const least = (some: readonly Rival[]) => some.reduce((a, b) => (b.errorPower < a.errorPower ? b : a));
   const rival = meeting.length > 0 ? least(meeting.filter((r) => r.order === simplest)) : nearLeast(contest, rivals);
-  const overlap = overlapOf(contest, rival, linesWithin);
+  const overlap = overlapOf(contest, rivals, rival, linesWithin);
   if (overlap !== null) return { rival, verdict: 'inseparable', overlap };
   return { rival, verdict: meeting.length > 0 ? 'clear' : 'compromise', overlap: null };
 }
@@ -42,11 +42,17 @@ function nearLeast({ evidence, limits }: Contest, rivals: readonly Rival[]): Riv
     .reduce((a, b) => (shortfallDb(b) < shortfallDb(a) ? b : a));
 }
 
-function overlapOf(contest: Contest, rival: Rival, linesWithin: readonly number[]): Choice['overlap'] {
-  const { evidence, limits } = contest;
+function overlapOf(
+  contest: Contest,
+  rivals: readonly Rival[],
+  rival: Rival,
+  linesWithin: readonly number[],
+): Choice['overlap'] {
+  const { evidence, limits, highestCornerHz } = contest;
   if (evidence.signalPower <= 0) return 'no signal';
   if (linesWithin.some((power) => power >= LINE_SHARE * evidence.noisePower)) return 'line within';
   if (evidence.noiseInBandPower > OVERLAP_SHARE * evidence.signalPower) return 'noise within';
+  if (rivals.every(({ allowedHz }) => allowedHz.lowHz > highestCornerHz)) return 'band full';
   const tooNear = rival.rejectionDb !== null && rival.rejectionDb < limits.rejectionDb / 2;
   return tooNear || rival.droopDb > Math.max(HOPELESS_DROOP_DB, limits.droopDb) ? 'line too near' : null;
 }
