@@ -27,6 +27,9 @@ const COUNTER_BITS = [16, 24, 31, 32];
 const DAY_SECONDS = 86_400;
 /** Share of repeated stamps that no logger writes twice by mistake. */
 const MANY_REPEATS = 0.2;
+/** Resolutions that a step may exceed the period by: rounding takes up to one; bundles with one stamp each may be late as well. */
+const ROUNDED_STEP = 1.25;
+const LATE_BUNDLE = 1.5;
 /** Odd steps that are needed to tell rounded stamps from lost samples. */
 const ENOUGH_STEPS = 8;
 
@@ -38,7 +41,7 @@ export function learnTimeRule(opening: Opening, unitsPerSecond: number, clock: b
   const written = decimalResolution(opening.stamps);
   const coarse = areCoarse(opening, steps, Math.max(written, step));
   const resolution = coarse ? Math.max(written, step) : written;
-  const { period, gap } = periodAndGap(coarse ? steps : moving, step, resolution);
+  const { period, gap } = periodAndGap(coarse ? steps : moving, step, resolution, coarse);
   const integer = written >= 1;
   return {
     unitsPerSecond,
@@ -100,12 +103,13 @@ function decimalResolution(stamps: Float64Array): number {
  * Period and the step that counts as a gap: 1.5 periods. Stamps coarse against the period step by the period rounded up or down;
  * then the larger step is no gap. It is told from a lost sample by a straight line, which rounded stamps never leave.
  */
-function periodAndGap(steps: Float64Array, step: number, resolution: number): { period: number; gap: number } {
+function periodAndGap(steps: Float64Array, step: number, resolution: number, coarse: boolean) {
   const fine = meanUpTo(steps, 1.5 * step);
   if (resolution <= 0.5 * fine || steps.length === 0) return { period: fine, gap: 1.5 * fine };
   let period = meanUpTo(steps, 1.5 * step + resolution);
-  for (let i = 0; i < 3; i++) period = meanUpTo(steps, Math.max(1.5 * period, period + 1.25 * resolution));
-  const gap = Math.max(1.5 * period, period + 1.25 * resolution);
+  const gapOf = (each: number) => Math.max(1.5 * each, each + (coarse ? LATE_BUNDLE : ROUNDED_STEP) * resolution);
+  for (let i = 0; i < 3; i++) period = meanUpTo(steps, gapOf(period));
+  const gap = gapOf(period);
   if (period < 0.999 * step) return { period, gap };
   const large = steps.filter((each) => each > 1.5 * step && each <= gap).length;
   const rounded = large >= ENOUGH_STEPS && residualRange(steps, gap) <= 1.5 * resolution;

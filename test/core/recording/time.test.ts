@@ -236,6 +236,16 @@ describe('stamps coarser than they should be', () => {
     expect(runs[0].startSeconds).toBe(0);
   });
 
+  it('spreads samples that come in bundles with one stamp each, however late', async () => {
+    const late = (i: number) => ((Math.imul(i, 2654435761) >>> 0) % 97) / 97;
+    const { facts, runs } = await read(
+      stamped('t [ms]', 4000, (i) => Math.floor((5 * i) / 16) * 16 + Math.floor(9 * late(Math.floor((5 * i) / 16)))),
+    );
+    expect(facts).toMatchObject({ resampled: false, gaps: [], longestRunSamples: 4000 });
+    expect(Math.abs(facts.rateHz / 200 - 1)).toBeLessThan(1e-3);
+    expect(runs[0].channels[0]).toEqual(Array.from({ length: 4000 }, (_, i) => wave(i)));
+  });
+
   it.each([
     [[1500], [1502]],
     [
