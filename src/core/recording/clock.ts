@@ -75,6 +75,7 @@ export class Clock {
     if (Number.isNaN(stamp)) return this.fill(batch.lines[i]);
     if (Number.isNaN(this.first)) {
       this.first = stamp;
+      this.filledInRow = 0;
       return 0;
     }
     let seconds = (stamp - this.first) / this.rule.unitsPerSecond + this.offset;
