@@ -59,7 +59,8 @@ caption { text-align: left; color: var(--faint); padding: 4px 0 8px; }
 th, td { padding: 5px 14px 5px 0; text-align: right; border-bottom: 1px solid var(--line); vertical-align: top; white-space: nowrap; }
 th:first-child, td.text { text-align: left; }
 td.text, th.text { text-align: left; }
-td.text { white-space: normal; }
+td.text { white-space: normal; min-width: 16ch; }
+.wide img { min-width: 680px; }
 thead th { color: var(--faint); font-weight: 600; border-bottom-color: var(--ink); vertical-align: bottom; }
 tbody th { font-weight: 500; }
 tr.chosen th, tr.chosen td { font-weight: 700; background: color-mix(in srgb, var(--accent) 12%, transparent); }

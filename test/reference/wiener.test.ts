@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { leastErrorCorner } from '../../src/core/advice/corner.ts';
 import { layEvidence } from '../../src/core/advice/evidence.ts';
 import { expectedError } from '../../src/core/advice/expected-error.ts';
-import { spectrumOf } from '../core/advice/synthetic.ts';
+import { powersOf, spectrumOf } from '../core/advice/synthetic.ts';
 import reference from './wiener.json' with { type: 'json' };
 
 /** First-order Markov signal in white noise; one-sided densities in Hz, to 2 kHz so that little is cut off. */
@@ -12,7 +12,12 @@ function markov(lambda: number) {
   const signal = (f: number) => (2 * 2) / ((2 * Math.PI * f) ** 2 + 1);
   const active = spectrumOf({ ...options, density: (f) => signal(f) + 2 * noise });
   const quiet = spectrumOf({ ...options, density: () => 2 * noise });
-  return layEvidence(active, quiet, 1, { lowHz: 0, highHz: 2000 }, 2000, []);
+  return layEvidence(powersOf(active), powersOf(quiet), quiet, {
+    noiseGainPower: 1,
+    keep: { lowHz: 0, highHz: 2000 },
+    signalHighHz: 2000,
+    inUse: [],
+  });
 }
 
 describe('Wiener bound', () => {
@@ -25,7 +30,12 @@ describe('Wiener bound', () => {
     const options = { rateHz: 100, binHz: 0.001, dof: 100 };
     const active = spectrumOf({ ...options, density: (f) => (f < 10.0005 ? 2.2 : 0.2) });
     const quiet = spectrumOf({ ...options, density: () => 0.2 });
-    const { wienerPower } = layEvidence(active, quiet, 1, { lowHz: 0, highHz: 10.0005 }, 11, []);
+    const { wienerPower } = layEvidence(powersOf(active), powersOf(quiet), quiet, {
+      noiseGainPower: 1,
+      keep: { lowHz: 0, highHz: 10.0005 },
+      signalHighHz: 11,
+      inUse: [],
+    });
     expect(wienerPower).toBeCloseTo(reference.flatBand.bound, 3);
   });
 });

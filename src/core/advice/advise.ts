@@ -1,6 +1,7 @@
 import { mergeLevels } from '../spectrum/merge.ts';
 import type { Band, LevelSpectrum, NoiseLine, Spectrum } from '../spectrum/spectrum.ts';
 import type { KeepBand, Limits, Rival } from './advice.ts';
+import { bandPowers } from './band-powers.ts';
 import { compareSpectra, excessBands } from './comparison.ts';
 import { cornerRange } from './corner-range.ts';
 import { layEvidence } from './evidence.ts';
@@ -50,20 +51,26 @@ export function advise(question: Question): Answer {
     gainPower,
     lines.map((line) => line.frequencyHz),
   );
-  const longest = activeLevels.reduce((a, b) => (b.segmentSamples > a.segmentSamples ? b : a));
-  const found = findSignalBands(comparison, excess, longest, quietSpectrum, gainPower);
+  const activeLevel = longest(activeLevels);
+  const found = findSignalBands(comparison, excess, activeLevel, quietSpectrum, gainPower);
   const keep: KeepBand = question.keepHz
     ? { ...question.keepHz, source: 'given' }
     : { ...(found.keep ?? { lowHz: 0, highHz: 0 }), source: 'measured' };
-  const inUse = found.inUse.filter((band) => band.lowHz > keep.highHz);
-  const signalHighHz = Math.max(keep.highHz, question.keepHz ? 0 : found.limits.highHz);
+  const division = {
+    noiseGainPower: gainPower,
+    keep,
+    signalHighHz: Math.max(keep.highHz, question.keepHz ? 0 : found.limits.highHz),
+    inUse: found.inUse.filter((band) => band.lowHz > keep.highHz),
+  };
+  const activePowers = bandPowers(activeLevel);
+  const quietPowers = bandPowers(longest(quietLevels));
   const contest: Contest = {
     limits,
     keepHighHz: keep.highHz,
     firstLineHz: question.rejectHz ?? lines.find((line) => line.frequencyHz > keep.highHz)?.frequencyHz ?? null,
     highestCornerHz: HIGHEST_CORNER_SHARE * Math.min(quietSpectrum.rateHz, activeSpectrum.rateHz),
     nominal: question.keepHz !== null && question.rejectHz !== null,
-    evidence: layEvidence(activeSpectrum, quietSpectrum, gainPower, keep, signalHighHz, inUse),
+    evidence: layEvidence(activePowers, quietPowers, quietSpectrum, division),
   };
   const field = rivals(contest);
   const within = lines.filter((line) => line.frequencyHz <= keep.highHz);
@@ -73,23 +80,27 @@ export function advise(question: Question): Answer {
     within.map((line) => (gainPower * line.amplitude ** 2) / 2),
   );
   const resampled = {
-    quietLevels,
-    activeLevels,
-    noiseGainPower: gainPower,
+    quietSpectrum,
+    quietPowers,
+    activePowers,
+    activeLevel,
     keep,
     excessLimits: found.limits,
-    signalHighHz,
-    inUse,
+    division,
   };
   return {
     quietSpectrum,
     activeSpectrum,
     noiseGainPower: gainPower,
     keep,
-    inUse,
+    inUse: division.inUse,
     contest,
     rivals: field,
     choice,
     cornerRangeHz: cornerRange(resampled, contest, choice.rival),
   };
+}
+
+function longest(levels: readonly LevelSpectrum[]): LevelSpectrum {
+  return levels.reduce((a, b) => (b.segmentSamples > a.segmentSamples ? b : a));
 }

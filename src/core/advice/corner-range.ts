@@ -1,23 +1,24 @@
 import type { Filter } from '../filter/filter.ts';
-import { mergeLevels, weightedDensity } from '../spectrum/merge.ts';
-import type { Band, LevelSpectrum } from '../spectrum/spectrum.ts';
+import { weightedDensity } from '../spectrum/merge.ts';
+import type { Band, LevelSpectrum, Spectrum } from '../spectrum/spectrum.ts';
 import type { KeepBand } from './advice.ts';
-import { layEvidence } from './evidence.ts';
+import { type BandPowers, reweighted } from './band-powers.ts';
+import { type Division, layEvidence } from './evidence.ts';
 import { excessEdge } from './keep-band.ts';
 import { uniformNumbers } from './random.ts';
 import { bestCorner, type Contest } from './rivals.ts';
 
-/** What a resampled corner is derived from again; everything but the spectra stays as found. */
+/** What a resampled corner is derived from again; everything but powers and keep-band edge stays as found. */
 export interface Resampled {
-  readonly quietLevels: readonly LevelSpectrum[];
-  readonly activeLevels: readonly LevelSpectrum[];
-  readonly noiseGainPower: number;
+  readonly quietSpectrum: Spectrum;
+  readonly quietPowers: BandPowers;
+  readonly activePowers: BandPowers;
+  /** The level at which the edge of the keep band is read. */
+  readonly activeLevel: LevelSpectrum;
   readonly keep: KeepBand;
   /** Limits within which the edge is looked for again, Hz. */
   readonly excessLimits: Band;
-  /** As far as any signal reaches, Hz. */
-  readonly signalHighHz: number;
-  readonly inUse: readonly Band[];
+  readonly division: Division;
 }
 
 const RESAMPLES = 100;
@@ -38,32 +39,27 @@ export function cornerRange(resampled: Resampled, contest: Contest, chosen: Filt
 }
 
 function resample(from: Resampled, contest: Contest, uniform: () => number): Contest {
-  const weigh = (levels: readonly LevelSpectrum[]) => {
-    const most = Math.max(...levels.map((level) => level.groups.length));
-    return Array.from({ length: most }, () => -Math.log(uniform()));
-  };
-  const activeWeights = weigh(from.activeLevels);
-  const active = mergeLevels(from.activeLevels, activeWeights);
-  const quiet = mergeLevels(from.quietLevels, weigh(from.quietLevels));
-  const longest = from.activeLevels.reduce((a, b) => (b.segmentSamples > a.segmentSamples ? b : a));
-  const read = weightedDensity(longest, activeWeights);
-  const highHz =
-    from.keep.source === 'given' || from.keep.highHz <= 0
-      ? from.keep.highHz
-      : excessEdge(
-          { ...longest, density: longest.density.map((_, bin) => read(bin)) },
-          quiet,
-          from.noiseGainPower,
-          from.excessLimits,
-        );
-  const keep = { ...from.keep, highHz };
+  const draw = (powers: BandPowers) => powers.groups.map(() => -Math.log(uniform()));
+  const activeWeights = draw(from.activePowers);
+  const highHz = edgeAgain(from, activeWeights);
   const evidence = layEvidence(
-    active,
-    quiet,
-    from.noiseGainPower,
-    keep,
-    Math.max(highHz, from.signalHighHz),
-    from.inUse,
+    reweighted(from.activePowers, activeWeights),
+    reweighted(from.quietPowers, draw(from.quietPowers)),
+    from.quietSpectrum,
+    {
+      ...from.division,
+      keep: { ...from.keep, highHz },
+      signalHighHz: Math.max(highHz, from.division.signalHighHz),
+    },
   );
   return { ...contest, keepHighHz: highHz, evidence };
+}
+
+function edgeAgain(
+  { keep, activeLevel, quietSpectrum, division, excessLimits }: Resampled,
+  weights: readonly number[],
+) {
+  if (keep.source === 'given' || keep.highHz <= 0) return keep.highHz;
+  const read = weightedDensity(activeLevel, weights);
+  return excessEdge(activeLevel, read, quietSpectrum, division.noiseGainPower, excessLimits);
 }

@@ -1,4 +1,5 @@
 import type { Band, Spectrum } from '../spectrum/spectrum.ts';
+import type { BandPowers } from './band-powers.ts';
 import { densityAt } from './density.ts';
 
 /**
@@ -23,75 +24,59 @@ export interface Evidence {
   readonly wienerPower: number;
 }
 
-/** Points of a twenty-fourth of an octave: no filter of order 8 bends within one. */
-const POINTS_PER_OCTAVE = 24;
+/** How signal and noise are told apart. */
+export interface Division {
+  /** Noise in use over noise when quiet, as a ratio of powers. */
+  readonly noiseGainPower: number;
+  readonly keep: Band;
+  /** As far as any signal reaches, Hz. */
+  readonly signalHighHz: number;
+  /** Bands present only in use: all noise. */
+  readonly inUse: readonly Band[];
+}
 
 /**
- * Lays the evidence out. Noise in use is the quiet density times `noiseGainPower`; within `inUse` bands all of the active
- * power is noise. The active spectrum speaks up to `signalHighHz`, as far as any signal reaches; beyond, what active and
- * quiet differ by is chance, and on strong lines more than all that a filter leaves. Active and quiet keep points of their
- * own, so that neither is resampled; the points are then condensed.
+ * Lays the evidence out. Noise in use is the quiet power times the noise gain; within `inUse` bands all of the active power
+ * is noise. The active recording speaks up to `signalHighHz`; beyond, what the two differ by is chance, and on strong lines
+ * more than all that a filter leaves. Both keep steps of their own; `quietSpectrum` tells the noise at the active ones.
  */
 export function layEvidence(
-  active: Spectrum,
-  quiet: Spectrum,
-  noiseGainPower: number,
-  keep: Band,
-  signalHighHz: number,
-  inUse: readonly Band[],
+  active: BandPowers,
+  quiet: BandPowers,
+  quietSpectrum: Spectrum,
+  { noiseGainPower, keep, signalHighHz, inUse }: Division,
 ): Evidence {
-  const points = new Condenser();
-  const inside = (bands: readonly Band[], f: number) => bands.some((band) => f >= band.lowHz && f <= band.highHz);
+  const rows: [frequencyHz: number, active: number, noise: number, signal: number][] = [];
+  const onlyInUse = (f: number) => inUse.some((band) => f >= band.lowHz && f <= band.highHz);
+  const kept = (f: number) => f >= keep.lowHz && f <= keep.highHz;
   let wienerPower = 0;
   active.frequencyHz.forEach((f, i) => {
-    const power = active.density[i] * active.widthHz[i];
-    const onlyInUse = inside(inUse, f);
-    if (!onlyInUse && f > signalHighHz) return;
-    const noise = noiseGainPower * densityAt(quiet, f) * active.widthHz[i];
-    const signal = !onlyInUse && f >= keep.lowHz && f <= keep.highHz ? Math.max(0, power - noise) : 0;
-    if (signal > 0) wienerPower += (signal * noise) / (signal + noise);
-    points.add(f, power, onlyInUse ? power : 0, signal);
+    const power = active.power[i];
+    if (onlyInUse(f)) rows.push([f, power, power, 0]);
+    else if (f <= signalHighHz) {
+      const noise = noiseGainPower * densityAt(quietSpectrum, f) * active.widthHz[i];
+      const signal = kept(f) ? Math.max(0, power - noise) : 0;
+      if (signal > 0) wienerPower += (signal * noise) / (signal + noise);
+      rows.push([f, power, 0, signal]);
+    }
   });
   let noiseInBandPower = 0;
   quiet.frequencyHz.forEach((f, i) => {
-    if (inside(inUse, f)) return;
-    const noise = noiseGainPower * quiet.density[i] * quiet.widthHz[i];
-    if (f >= keep.lowHz && f <= keep.highHz) noiseInBandPower += noise;
-    points.add(f, f > signalHighHz ? noise : 0, noise, 0);
+    if (onlyInUse(f)) return;
+    const noise = noiseGainPower * quiet.power[i];
+    if (kept(f)) noiseInBandPower += noise;
+    rows.push([f, f > signalHighHz ? noise : 0, noise, 0]);
   });
-  return { ...points.result(), noiseInBandPower, wienerPower };
-}
-
-/** Sums powers within narrow steps of frequency, each at its power's centre. */
-class Condenser {
-  private readonly sums = new Map<
-    number,
-    [moment: number, weight: number, active: number, noise: number, signal: number]
-  >();
-
-  add(frequencyHz: number, active: number, noise: number, signal: number): void {
-    // What is measured in use and what is known from quiet stay apart: their centres differ within a step.
-    const step = Math.floor(Math.log2(frequencyHz) * POINTS_PER_OCTAVE) * 2 + (active === noise ? 0 : 1);
-    const sum = this.sums.get(step) ?? [0, 0, 0, 0, 0];
-    const weight = Math.max(active, noise);
-    sum[0] += frequencyHz * weight;
-    sum[1] += weight;
-    sum[2] += active;
-    sum[3] += noise;
-    sum[4] += signal;
-    this.sums.set(step, sum);
-  }
-
-  result(): Omit<Evidence, 'noiseInBandPower' | 'wienerPower'> {
-    const rows = [...this.sums.values()].filter((sum) => sum[1] > 0);
-    const total = (index: number) => rows.reduce((all, row) => all + row[index], 0);
-    return {
-      frequencyHz: Float64Array.from(rows, (row) => row[0] / row[1]),
-      active: Float64Array.from(rows, (row) => row[2]),
-      noise: Float64Array.from(rows, (row) => row[3]),
-      signal: Float64Array.from(rows, (row) => row[4]),
-      noisePower: total(3),
-      signalPower: total(4),
-    };
-  }
+  const column = (index: 0 | 1 | 2 | 3) => Float64Array.from(rows, (row) => row[index]);
+  const total = (index: 2 | 3) => rows.reduce((sum, row) => sum + row[index], 0);
+  return {
+    frequencyHz: column(0),
+    active: column(1),
+    noise: column(2),
+    signal: column(3),
+    noisePower: total(2),
+    signalPower: total(3),
+    noiseInBandPower,
+    wienerPower,
+  };
 }

@@ -44,7 +44,7 @@ export function findSignalBands(
   return {
     keep: {
       lowHz: excess.indexOf(true) < 3 ? 0 : limits.lowHz,
-      highHz: excessEdge(active, quiet, noiseGainPower, limits),
+      highHz: excessEdge(active, (bin) => active.density[bin], quiet, noiseGainPower, limits),
     },
     inUse: clusters.slice(last + 1).map(({ lowHz, highHz }) => ({ lowHz, highHz })),
     limits,
@@ -53,15 +53,21 @@ export function findSignalBands(
 
 /**
  * Frequency in Hz below which 99 % of the excess of active over quiet·`noiseGainPower` within `limits` lies,
- * corrected for the leakage of the window.
+ * corrected for the leakage of the window. `read` gives the density of `active` at a bin.
  */
-export function excessEdge(active: LevelSpectrum, quiet: Spectrum, noiseGainPower: number, limits: Band): number {
+export function excessEdge(
+  active: LevelSpectrum,
+  read: (bin: number) => number,
+  quiet: Spectrum,
+  noiseGainPower: number,
+  limits: Band,
+): number {
   const binHz = active.rateHz / active.segmentSamples;
   const first = Math.max(1, Math.floor(limits.lowHz / binHz));
   const last = Math.min(active.density.length - 1, Math.ceil(limits.highHz / binHz));
   const cumulated = new Float64Array(last - first + 2);
   for (let bin = first; bin <= last; bin++) {
-    const excess = active.density[bin] - noiseGainPower * densityAt(quiet, bin * binHz);
+    const excess = read(bin) - noiseGainPower * densityAt(quiet, bin * binHz);
     cumulated[bin - first + 1] = cumulated[bin - first] + excess;
   }
   const target = KEPT_SHARE * cumulated[cumulated.length - 1];

@@ -5,7 +5,6 @@ import { MAINS_DEVIATION, MAINS_HZ, mainsName } from './mains.ts';
 export interface MeasuredLine {
   readonly frequencyHz: number;
   readonly toleranceHz: number;
-  readonly amplitude: number;
 }
 
 /** Highest harmonic looked for in a machine's family and in a network's. */

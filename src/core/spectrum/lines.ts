@@ -1,6 +1,7 @@
-import { estimateFloor, type Floor } from './floor.ts';
+import type { Floor } from './floor.ts';
 import { foldedFrom } from './folding.ts';
 import { nameFamilies } from './harmonics.ts';
+import { FIRST_BIN, floorOfBins } from './line-floor.ts';
 import { chiSquareQuantile, fQuantile } from './quantiles.ts';
 import type { LevelSpectrum, NoiseLine } from './spectrum.ts';
 import { HANN, hannLobe, hannOffset, hannSideLobes } from './window.ts';
@@ -27,8 +28,6 @@ export interface Peak {
   readonly kind: 'line' | 'resonance';
 }
 
-/** Bins 0 to 2 hold the removed mean and drift. */
-const FIRST_BIN = 3;
 /** Main lobe of the Hann window: two bins to either side. */
 const LOBE = 2;
 /** Width at a quarter of the density: exactly 2 bins for a sine, a clear factor more for a resonance. */
@@ -63,10 +62,16 @@ export function findLines(level: LevelSpectrum, options: LineOptions = {}): Nois
  * spectra (Bonferroni over the bins), the floor's own uncertainty counted in (an F test, which is the χ² test once the floor is
  * known well), and stand out of its surroundings. Strongest first; what lies within a main lobe of a stronger peak belongs to it,
  * and side lobes, falling 18 dB an octave (Harris 1978), count as floor. Frequencies come from the three bins of the main lobe,
- * amplitudes from its power less the floor.
+ * amplitudes from its power less the floor. Where there are lines the floor is then estimated anew without the bins that they and
+ * their side lobes fill, and the search repeated: a strong line low in frequency would otherwise lift its own floor.
  */
 export function findPeaks(level: LevelSpectrum, options: LineOptions = {}): Peak[] {
-  return new PeakSearch(level, options).run().sort((a, b) => a.frequencyHz - b.frequencyHz);
+  const first = new PeakSearch(level, floorOfBins(level), options);
+  const peaks = first.run();
+  const again = peaks.some((peak) => peak.kind === 'line')
+    ? new PeakSearch(level, floorOfBins(level, first.filledBins()), options).run()
+    : peaks;
+  return again.sort((a, b) => a.frequencyHz - b.frequencyHz);
 }
 
 class PeakSearch {
@@ -84,13 +89,12 @@ class PeakSearch {
   private readonly chance: number;
   private readonly narrowRatio: number;
 
-  constructor(level: LevelSpectrum, options: LineOptions) {
+  constructor(level: LevelSpectrum, floor: Floor, options: LineOptions) {
     this.density = level.density;
     this.binHz = level.rateHz / level.segmentSamples;
     this.dof = level.degreesOfFreedom;
-    const { density, degreesOfFreedom } = floorOfBins(level);
-    this.floor = density;
-    this.floorDof = degreesOfFreedom;
+    this.floor = floor.density;
+    this.floorDof = floor.degreesOfFreedom;
     this.sideLobes = new Float64Array(this.density.length);
     this.taken = new Uint8Array(this.density.length);
     this.endBin = this.density.length - 2;
@@ -106,6 +110,11 @@ class PeakSearch {
       if (peak !== null) peaks.push(peak);
     }
     return peaks;
+  }
+
+  /** Bins that lines and their side lobes fill, so that they say nothing of the floor. */
+  filledBins(): Uint8Array {
+    return this.taken.map((by, k) => (by === 1 || this.sideLobes[k] > this.density[k] ? 1 : 0));
   }
 
   /** Local maxima above the least threshold, strongest first. */
@@ -257,23 +266,4 @@ class PeakSearch {
 function frequencyTolerance(ratio: number, dof: number): number {
   const above = Math.max(ratio, 0.1);
   return 0.02 + (1.5 / Math.sqrt(dof * above)) * Math.sqrt(1 + 4 / above);
-}
-
-/** Floor of a level by bin; bins 0 to 2, which hold the removed mean and drift, take the floor of bin 3. */
-function floorOfBins(level: LevelSpectrum): Floor {
-  const first = Math.min(FIRST_BIN, level.density.length - 1);
-  const points = level.density.length - first;
-  const frequencyHz = new Float64Array(points);
-  for (let i = 0; i < points; i++) frequencyHz[i] = i + first;
-  const found = estimateFloor({
-    frequencyHz,
-    density: level.density.subarray(first),
-    degreesOfFreedom: new Float64Array(points).fill(level.degreesOfFreedom),
-  });
-  const byBin = (values: Float64Array) => {
-    const all = new Float64Array(level.density.length).fill(values[0]);
-    all.set(values, first);
-    return all;
-  };
-  return { density: byBin(found.density), degreesOfFreedom: byBin(found.degreesOfFreedom) };
 }

@@ -67,7 +67,7 @@ describe('excessEdge', () => {
     const quiet = spectrumOf({ rateHz: RATE_HZ, binHz: 0.1, dof: 40, density: white });
     const edge = (density: number) => {
       const active = levelOf({ rateHz: RATE_HZ, segmentSamples: 32768, segments: 8, density: flatTo(5, density) });
-      return excessEdge(active, quiet, 1, { lowHz: 0, highHz: 6 });
+      return excessEdge(active, (bin) => active.density[bin], quiet, 1, { lowHz: 0, highHz: 6 });
     };
     expect(edge(1000)).toBeCloseTo(edge(10), 6);
     expect(edge(10)).toBeCloseTo(4.95, 1);

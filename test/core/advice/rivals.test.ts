@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { layEvidence } from '../../../src/core/advice/evidence.ts';
 import { allowedCorners, type Contest, rivals } from '../../../src/core/advice/rivals.ts';
 import { choose } from '../../../src/core/advice/verdict.ts';
-import { spectrumOf } from './synthetic.ts';
+import { powersOf, spectrumOf } from './synthetic.ts';
 
 const LIMITS = { droopDb: 0.5, rejectionDb: 20 };
 
@@ -18,7 +18,12 @@ function contest(options: {
   const disturbed = (f: number) => noise + (firstLineHz !== null && Math.abs(f - firstLineHz) < 0.02 ? 100 * noise : 0);
   const active = spectrumOf({ ...grid, density: (f) => (f <= keepHighHz ? 1 : 0) + disturbed(f) });
   const quiet = spectrumOf({ ...grid, density: disturbed });
-  const evidence = layEvidence(active, quiet, 1, { lowHz: 0, highHz: keepHighHz }, keepHighHz, []);
+  const evidence = layEvidence(powersOf(active), powersOf(quiet), quiet, {
+    noiseGainPower: 1,
+    keep: { lowHz: 0, highHz: keepHighHz },
+    signalHighHz: keepHighHz,
+    inUse: [],
+  });
   return { limits: LIMITS, keepHighHz, firstLineHz, highestCornerHz: 0.45 * rateHz, nominal: true, evidence };
 }
 

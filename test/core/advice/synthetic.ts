@@ -1,3 +1,4 @@
+import type { BandPowers } from '../../../src/core/advice/band-powers.ts';
 import type { LevelSpectrum, Spectrum } from '../../../src/core/spectrum/spectrum.ts';
 
 /** Spectrum whose density is a given function, on equal bins up to Nyquist, with the same degrees of freedom everywhere. */
@@ -36,4 +37,9 @@ export function levelOf(options: {
     degreesOfFreedom: 2 * options.segments,
     groups: Array.from({ length: 8 }, () => ({ segments: perGroup, density })),
   };
+}
+
+/** A spectrum's points taken as steps of power, without groups. */
+export function powersOf({ frequencyHz, widthHz, density }: Spectrum): BandPowers {
+  return { frequencyHz, widthHz, power: density.map((value, i) => value * widthHz[i]), groups: [], segments: [] };
 }
