@@ -129,6 +129,8 @@ function join(a: ActivityWindow, b: ActivityWindow): ActivityWindow {
 const CELLS = 64;
 /** Factor in variance by which a cell must depart from the median before it is disturbed, however sure the difference is. */
 const PRACTICAL_RATIO = 4;
+/** The same for cells that are fainter: two lines that beat fade now and then, a sensor that fell silent differs by more. */
+const PRACTICAL_FAINT_RATIO = 50;
 /** The same for jumps of the mean, which slow noise makes scatter more: five standard deviations. */
 const PRACTICAL_JUMP_RATIO = 25;
 const CHANCE = 1e-4;
@@ -150,7 +152,8 @@ interface Cell extends StationaryStretch {
 /**
  * The longest part, or parts, of a quiet recording that is stationary. `windows` come from an ActivityFold, `rateHz` is its rate.
  * A cell (a 64th of the recording, one window at the least) is disturbed where its variance departs from the median by more than
- * chance (F test) and by a factor of four, or where the mean jumps; a few that hardly change the noise power stay in.
+ * chance (F test) and by a factor of four (fifty, where it is fainter), or where the mean jumps; a few that hardly change the noise
+ * power stay in.
  * Kept are the undisturbed stretches: the longest, and those of an eighth of it or more. Throws RangeError without a window.
  */
 export function stationaryStretches(windows: readonly ActivityWindow[], rateHz: number): StationaryPart {
@@ -206,7 +209,7 @@ function disturbedCells(cells: readonly Cell[]): Set<Cell> {
     const dof = dofOf(cell.samples);
     return ratio > 1
       ? ratio > Math.max(PRACTICAL_RATIO, fQuantile(1 - CHANCE, dof, referenceDof))
-      : 1 / Math.max(ratio, 1e-300) > Math.max(PRACTICAL_RATIO, fQuantile(1 - CHANCE, referenceDof, dof));
+      : 1 / Math.max(ratio, 1e-300) > Math.max(PRACTICAL_FAINT_RATIO, fQuantile(1 - CHANCE, referenceDof, dof));
   });
   const change = (cell: Cell) => (Math.abs(cell.variance - typical) * cell.samples) / (typical * samplesOf(cells));
   let tolerated = 0;
