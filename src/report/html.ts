@@ -57,7 +57,7 @@ ${study.channels.map((channel, place) => traces(channel, place, figure))}
 <h2 id="spectra">Spectra, keep band and noise lines</h2>
 ${study.channels.map(
   (channel, place) => html`<h3>${channel.channel.name}</h3>
-${figure(pictureIds(channel, place).spectrum, 'Triangles mark the noise lines found in the quiet recording; the shaded stretch is the keep band. The dashed curve is the gain of the filter, on the right-hand scale.')}
+<div class="scroll wide" tabindex="0" role="region" aria-label="Spectra of ${channel.channel.name}">${figure(pictureIds(channel, place).spectrum, 'Triangles mark the noise lines found in the quiet recording; the shaded stretch is the keep band. The dashed curve is the gain of the filter, on the right-hand scale.')}</div>
 ${linesTable(channel)}
 ${inUse(channel)}
 `,

@@ -25,7 +25,12 @@ function printed(value: Value): string {
   if (value === null || value === undefined || value === false) return '';
   if (value instanceof Markup) return value.text;
   if (Array.isArray(value)) return value.map(printed).join('');
-  return escapeText(String(value));
+  return escapeText(unbroken(String(value)));
+}
+
+/** A number keeps to its unit where a line ends. */
+function unbroken(text: string): string {
+  return text.replace(/(?<=[\d×∞]) (?=(?:k?Hz|dB|[mµn]?s|min|h|%)(?![\w/]))/g, '\u00a0');
 }
 
 const ESCAPES: Readonly<Record<string, string>> = {

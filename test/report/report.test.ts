@@ -1,0 +1,142 @@
+import { beforeAll, describe, expect, it } from 'vitest';
+import { study } from '../../src/core/study.ts';
+import type { Study } from '../../src/core/study-result.ts';
+import type { Point } from '../../src/report/chart-spec.ts';
+import { reportCharts } from '../../src/report/charts.ts';
+import { renderReport } from '../../src/report/html.ts';
+import { madeRecording } from '../made-recording.ts';
+
+const HOSTILE = '<script>alert(1)</script>"onload=\'=cmd|';
+const PIXEL = 'data:image/png;base64,iVBORw0KGgo=';
+const SETTINGS = { droopDb: 0.5, rejectionDb: 20, keepHz: null, rejectHz: null, channels: null, rateHz: null };
+const CONTEXT = { commandLine: `quietcorner advise ${HOSTILE}`, madeAt: '2026-01-01T00:00:00Z' };
+
+function uniform(start: number): () => number {
+  let state = start;
+  return () => {
+    state = (16807 * state) % 2147483647;
+    return state / 2147483647 - 0.5;
+  };
+}
+
+/** One channel with a line at 20 Hz, 100 Hz sampled; in use it moves below 1 Hz, with a gap and one lone peak. */
+async function madeStudy(withLine: boolean): Promise<Study> {
+  const draw = uniform(77);
+  const noise = (i: number) => draw() + (withLine ? Math.sin((2 * Math.PI * 30 * i) / 100) : 0);
+  const quiet = Float64Array.from({ length: 12000 }, (_, i) => noise(i));
+  const moving = Float64Array.from({ length: 12000 }, (_, i) => noise(i) + 5 * Math.sin(i / 40) + 3 * Math.sin(i / 17));
+  moving[7001] = 99;
+  const options = { rateHz: 100, channels: [{ name: HOSTILE, unit: HOSTILE }], file: `${HOSTILE}.csv` };
+  const active = madeRecording({
+    ...options,
+    runs: [
+      { startSeconds: 0, samples: [moving.slice(0, 8000)] },
+      { startSeconds: 200, samples: [moving.slice(8000)] },
+    ],
+  });
+  const made = { ...options, runs: [{ startSeconds: 0, samples: [quiet] }] };
+  return study({ quiet: madeRecording(made), active, settings: SETTINGS, version: '0.0.0' });
+}
+
+const pagesOf = (found: Study) =>
+  renderReport(
+    found,
+    reportCharts(found).map(({ id }) => ({ id, png: PIXEL })),
+    CONTEXT,
+  );
+
+describe('the report', () => {
+  let found: Study;
+  let page: string;
+  beforeAll(async () => {
+    found = await madeStudy(true);
+    page = pagesOf(found);
+  });
+
+  it('holds no script and no address, under a policy that forbids every request', () => {
+    expect(page).not.toMatch(/<script/i);
+    expect(page).not.toMatch(/https?:\/\//);
+    expect(page).toContain(`http-equiv="Content-Security-Policy" content="default-src &#39;none&#39;; img-src data:`);
+  });
+
+  it('shows hostile names as text', () => {
+    expect(page).toContain('&lt;script&gt;alert(1)&lt;/script&gt;&quot;onload=&#39;=cmd|');
+    expect(page).not.toMatch(/<[^>]*onload=(?!&)[^&"]*>/);
+  });
+
+  it('comes in the order of what an engineer asks', () => {
+    const headings = [...page.matchAll(/<h2[^>]*>([^<]+)</g)].map((match) => match[1]);
+    expect(headings).toEqual([
+      'Which filter',
+      'Before and after',
+      'Spectra, keep band and noise lines',
+      'Rivals',
+      'Health of the recordings',
+      'Cautions',
+      'How to reproduce it',
+      'Signed',
+    ]);
+  });
+
+  it('gives every picture a text with figures', () => {
+    const texts = [...page.matchAll(/<img [^>]*alt="([^"]+)"/g)].map((match) => match[1]);
+    expect(texts).toHaveLength(reportCharts(found).length);
+    for (const text of texts) expect(text).toMatch(/\d/);
+  });
+
+  it('says how to repeat it', () => {
+    expect(page).toContain(found.quiet.sha256);
+    expect(page).toContain('2026-01-01T00:00:00Z');
+    expect(page).toContain('Quietcorner 0.0.0');
+  });
+
+  it('always stands by its cautions', () => {
+    for (const word of [
+      'control or protection loop',
+      'alarm',
+      'Mains-connected and medical',
+      'local codes',
+      'qualified person',
+    ])
+      expect(page).toContain(word);
+  });
+
+  it('marks the chosen rival and no other', () => {
+    expect(page.match(/<tr class="chosen">/g)).toHaveLength(1);
+  });
+
+  it('refuses to leave a picture out', () => {
+    expect(() => renderReport(found, [], CONTEXT)).toThrow(/picture/);
+  });
+
+  it('keeps a one-sample peak in the overview, and breaks the curve in the gap', () => {
+    const [overview] = reportCharts(found);
+    const points = overview.config.data.datasets[0].data as unknown as Point[];
+    expect(Math.max(...points.map(({ y }) => y).filter((y) => !Number.isNaN(y)))).toBe(99);
+    const inGap = points.filter(({ x }) => x > 85 && x < 195);
+    expect(inGap.length).toBeGreaterThan(100);
+    expect(inGap.every(({ y }) => Number.isNaN(y))).toBe(true);
+  });
+
+  it('prints sensibly where there is no noise line', async () => {
+    const without = pagesOf(await madeStudy(false));
+    expect(without).toContain('no line');
+    expect(without).not.toMatch(/NaN|undefined|null|Infinity/);
+    expect(page).not.toMatch(/NaN|undefined|null|Infinity/);
+  });
+
+  it('prints sensibly where signal and noise are inseparable', async () => {
+    const draw = uniform(5);
+    const recording = () =>
+      madeRecording({
+        rateHz: 100,
+        channels: [{ name: 'a', unit: 'g' }],
+        runs: [{ startSeconds: 0, samples: [Float64Array.from({ length: 5000 }, draw)] }],
+      });
+    const nothing = pagesOf(
+      await study({ quiet: recording(), active: recording(), settings: SETTINGS, version: '0.0.0' }),
+    );
+    expect(nothing).toContain('no corner can be defended');
+    expect(nothing).not.toMatch(/NaN|undefined|null|Infinity/);
+  });
+});
