@@ -5,7 +5,7 @@ import { levelFrom, normalNumbers, samplesFor, samplesOf } from './noise.ts';
 /** Noise of different colours from normal numbers; each starts anew for every spectrum. */
 const COLOURS: Record<string, (normal: () => number) => () => number> = {
   white: (normal) => normal,
-  // Three one-pole low-passes, within 0.5 dB of 1/f over the bins used here (P. Kellet's economy filter; common practice).
+  // Three one-pole low-passes, within 0.5 dB of 1/f over the bins used here (from memory).
   '1/f': (normal) => {
     let [a, b, c] = [0, 0, 0];
     return () => {
