@@ -1,7 +1,7 @@
 import type { RecordingFacts } from './recording/recording.ts';
 import type { ChannelStudy, Study } from './study-result.ts';
 
-export const STUDY_SCHEMA = 'quietcorner/study@1';
+const STUDY_SCHEMA = 'quietcorner/study@1';
 
 /** Where the products of a study were written; null for what was not asked for. */
 export interface StudyFiles {

@@ -53,6 +53,7 @@ figure img { display: block; width: 100%; height: auto; border: 1px solid #d3d9d
 figcaption { color: var(--faint); font-size: 0.9rem; margin-top: 4px; max-width: 92ch; }
 .pair { display: grid; grid-template-columns: 1fr 1fr; gap: 0 16px; }
 .scroll { overflow-x: auto; }
+section > .scroll + .scroll { margin-top: 36px; }
 .scroll:focus-visible { outline: 2px solid var(--accent); }
 table { border-collapse: collapse; width: 100%; font-size: 0.92rem; font-variant-numeric: tabular-nums; }
 caption { text-align: left; color: var(--faint); padding: 4px 0 8px; }

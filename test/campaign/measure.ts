@@ -7,7 +7,7 @@ import { study } from '../../src/core/study.ts';
 import type { StudySettings } from '../../src/core/study-result.ts';
 import { makePair, type PairRecipe, type Truth } from './pairs.ts';
 
-export const SETTINGS: StudySettings = {
+const SETTINGS: StudySettings = {
   droopDb: 0.5,
   rejectionDb: 20,
   keepHz: null,

@@ -1,5 +1,6 @@
 import { fQuantile } from '../spectrum/quantiles.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
+import { HANN } from '../spectrum/window.ts';
 
 /** Active and quiet spectra averaged over the same bands; all arrays of one length, frequencies increasing. */
 export interface Comparison {
@@ -94,7 +95,8 @@ class StepDensity {
       dof += (degreesOfFreedom[point] * (to - from)) / widthHz[point];
       from = to;
     }
-    return { density: power / (highHz - lowHz), dof: Math.max(dof, smallestDof) };
+    // Neighbouring bins of a Hann spectrum tell partly the same.
+    return { density: power / (highHz - lowHz), dof: Math.max(dof / HANN.neighbourInflation, smallestDof) };
   }
 
   private pointAt(frequencyHz: number): number {

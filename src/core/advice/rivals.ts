@@ -22,7 +22,7 @@ export interface Contest {
 }
 
 /** Families and orders that compete, the simplest first; the order of this list ranks equals. */
-export const CONTESTANTS: readonly { readonly family: Family; readonly order: number }[] = [
+const CONTESTANTS: readonly { readonly family: Family; readonly order: number }[] = [
   { family: 'rc', order: 1 },
   ...[2, 3, 4, 5, 6, 7, 8].flatMap((order) => [
     { family: 'butterworth' as const, order },
