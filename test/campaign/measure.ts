@@ -28,6 +28,8 @@ export interface Measured {
   readonly edgeRatio: number;
   readonly trueDroopDb: number;
   readonly trueRejectionDb: number;
+  readonly best: { readonly cornerHz: number; readonly lowHz: number; readonly highHz: number } | null;
+  readonly range: readonly [number, number];
   readonly coversBest: boolean;
 }
 
@@ -49,6 +51,8 @@ export async function measure(recipe: PairRecipe, seed: number): Promise<Measure
     edgeRatio: keep.highHz / truth.keepHighHz,
     trueDroopDb: -gainDb(filter, truth.keepHighHz),
     trueRejectionDb: -gainDb(filter, truth.firstLineHz),
+    best,
+    range: advice.cornerRangeHz,
     coversBest: best !== null && best.cornerHz >= advice.cornerRangeHz[0] && best.cornerHz <= advice.cornerRangeHz[1],
   };
 }
@@ -62,10 +66,18 @@ function bestWithinTruth(recipe: PairRecipe, truth: Truth, filter: Filter, error
   };
   const { lowHz, highHz } = allowedCorners(contest, filter.family, filter.order);
   if (highHz < lowHz) return null;
-  const corners = Array.from({ length: 9 }, (_, i) => lowHz * (highHz / lowHz) ** (i / 8));
-  return corners
-    .map((cornerHz) => ({ cornerHz, error: errorAt(cornerHz) }))
-    .reduce((a, b) => (b.error < a.error ? b : a));
+  const at = (part: number) => lowHz * (highHz / lowHz) ** part;
+  const errors = Array.from({ length: 9 }, (_, i) => errorAt(at(i / 8)));
+  const least = errors.indexOf(Math.min(...errors));
+  const cornerHz = at((least + vertex(errors[least - 1], errors[least], errors[least + 1])) / 8);
+  return { cornerHz, error: Math.min(errors[least], errorAt(cornerHz)), lowHz, highHz };
+}
+
+/** Offset of the least value of the parabola through three equally spaced values; 0 at a border. */
+function vertex(before: number | undefined, here: number, after: number | undefined): number {
+  if (before === undefined || after === undefined) return 0;
+  const curvature = before - 2 * here + after;
+  return curvature > 0 ? (before - after) / (2 * curvature) : 0;
 }
 
 async function samplesOf(recording: { blocks(): AsyncIterable<{ channels: readonly Float64Array[] }> }) {

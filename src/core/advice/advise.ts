@@ -64,10 +64,11 @@ export function advise(question: Question): Answer {
   };
   const activePowers = bandPowers(activeLevel);
   const quietPowers = bandPowers(longest(quietLevels));
+  const firstLine = lines.find((line) => line.frequencyHz > keep.highHz);
   const contest: Contest = {
     limits,
     keepHighHz: keep.highHz,
-    firstLineHz: question.rejectHz ?? lines.find((line) => line.frequencyHz > keep.highHz)?.frequencyHz ?? null,
+    firstLineHz: question.rejectHz ?? firstLine?.frequencyHz ?? null,
     highestCornerHz: HIGHEST_CORNER_SHARE * Math.min(quietSpectrum.rateHz, activeSpectrum.rateHz),
     nominal: question.keepHz !== null && question.rejectHz !== null,
     evidence: layEvidence(activePowers, quietPowers, quietSpectrum, division),
@@ -86,6 +87,7 @@ export function advise(question: Question): Answer {
     activeLevel,
     keep,
     excessLimits: found.limits,
+    firstLineDeviationHz: question.rejectHz === null && firstLine ? firstLine.toleranceHz / 2 : 0,
     division,
   };
   return {

@@ -18,6 +18,8 @@ export interface Resampled {
   readonly keep: KeepBand;
   /** Limits within which the edge is looked for again, Hz. */
   readonly excessLimits: Band;
+  /** Standard deviation of the first noise line's frequency, Hz; 0 where it was given. */
+  readonly firstLineDeviationHz: number;
   readonly division: Division;
 }
 
@@ -26,7 +28,7 @@ const START = 20011;
 
 /**
  * 90 % interval of the corner, Hz: groups of segments are weighted anew a hundred times (Bayesian bootstrap, Rubin 1981),
- * and keep band and corner are found again from each.
+ * and keep band and corner are found again from each, with the first noise line as uncertain as it was measured.
  */
 export function cornerRange(resampled: Resampled, contest: Contest, chosen: Filter): readonly [number, number] {
   const uniform = uniformNumbers(START);
@@ -52,7 +54,14 @@ function resample(from: Resampled, contest: Contest, uniform: () => number): Con
       signalHighHz: Math.max(highHz, from.division.signalHighHz),
     },
   );
-  return { ...contest, keepHighHz: highHz, evidence };
+  const firstLineHz =
+    contest.firstLineHz === null ? null : contest.firstLineHz + from.firstLineDeviationHz * normal(uniform);
+  return { ...contest, keepHighHz: highHz, firstLineHz, evidence };
+}
+
+/** Standard normal number; Box & Muller 1958. */
+function normal(uniform: () => number): number {
+  return Math.sqrt(-2 * Math.log(uniform())) * Math.cos(2 * Math.PI * uniform());
 }
 
 function edgeAgain(

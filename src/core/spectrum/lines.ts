@@ -50,6 +50,7 @@ export function findLines(level: LevelSpectrum, options: LineOptions = {}): Nois
   const families = nameFamilies(lines);
   return lines.map(({ frequencyHz, toleranceHz, amplitude, aboveFloorDb }, i) => ({
     frequencyHz,
+    toleranceHz,
     amplitude,
     aboveFloorDb,
     family: families[i],

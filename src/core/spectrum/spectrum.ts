@@ -26,6 +26,8 @@ export interface Spectrum {
 /** A narrow peak of the quiet spectrum above its noise floor. */
 export interface NoiseLine {
   readonly frequencyHz: number;
+  /** Uncertainty of the frequency, about two standard deviations, Hz. */
+  readonly toleranceHz: number;
   /** Peak amplitude of the sine, in the channel's unit. */
   readonly amplitude: number;
   /** Height of the density above the noise floor at the line level's resolution, dB. */
