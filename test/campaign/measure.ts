@@ -95,19 +95,19 @@ async function samplesOf(recording: { blocks(): AsyncIterable<{ channels: readon
 /** Mean-square error of the filtered recording against the signal (plus offset), at the best single delay, once settled. */
 function delayedError(noisy: Float64Array, signal: Float64Array, filter: Filter, recipe: PairRecipe): number {
   const filtered = new FilterFold(discretise(filter, recipe.rateHz)).push(noisy, true);
-  const skip = Math.min(Math.floor(noisy.length / 4), Math.ceil((4 / filter.cornerHz) * recipe.rateHz) + 4);
+  const skip = Math.min(Math.floor(noisy.length / 4), Math.ceil((4 / filter.cornerHz) * recipe.rateHz) + TAPS);
   const error = (delay: number) => {
     let sum = 0;
     const whole = Math.floor(delay);
-    const part = delay - whole;
-    for (let i = skip; i < filtered.length; i++) {
-      const k = i - whole;
-      const wanted = signal[k] + part * (signal[k - 1] - signal[k]) + recipe.offset;
+    const weights = lagrangeWeights(delay - whole);
+    for (let i = skip; i < filtered.length - TAPS; i++) {
+      let wanted = recipe.offset;
+      for (let tap = 0; tap < TAPS; tap++) wanted += weights[tap] * signal[i - whole + TAPS / 2 - 1 - tap];
       sum += (filtered[i] - wanted) ** 2;
     }
-    return sum / (filtered.length - skip);
+    return sum / (filtered.length - TAPS - skip);
   };
-  const most = Math.min(skip - 3, Math.ceil((filter.order * recipe.rateHz) / filter.cornerHz));
+  const most = Math.min(skip - TAPS, Math.ceil((filter.order * recipe.rateHz) / filter.cornerHz));
   const near = leastOf(
     Array.from({ length: 25 }, (_, i) => (most * i) / 24),
     error,
@@ -122,6 +122,16 @@ function delayedError(noisy: Float64Array, signal: Float64Array, filter: Filter,
     else low = a;
   }
   return error((low + high) / 2);
+}
+
+const TAPS = 10;
+
+/** Weights of Lagrange's polynomial through ten samples, for a delay of 0 to 1 sample from the fifth (Abramowitz & Stegun 25.2.1). */
+function lagrangeWeights(part: number): number[] {
+  const at = part + TAPS / 2 - 1;
+  return Array.from({ length: TAPS }, (_, k) =>
+    Array.from({ length: TAPS }, (_, j) => (j === k ? 1 : (at - j) / (k - j))).reduce((a, b) => a * b, 1),
+  );
 }
 
 function leastOf(values: readonly number[], error: (value: number) => number): number {

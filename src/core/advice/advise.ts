@@ -56,7 +56,9 @@ export function advise(question: Question): Answer {
   const keep: KeepBand = question.keepHz
     ? { ...question.keepHz, source: 'given' }
     : { ...(found.keep ?? { lowHz: 0, highHz: 0 }), source: 'measured' };
+  const rateHz = Math.min(quietSpectrum.rateHz, activeSpectrum.rateHz);
   const division = {
+    rateHz,
     noiseGainPower: gainPower,
     keep,
     signalHighHz: Math.max(keep.highHz, question.keepHz ? 0 : found.limits.highHz),
@@ -69,7 +71,7 @@ export function advise(question: Question): Answer {
     limits,
     keepHighHz: keep.highHz,
     firstLineHz: question.rejectHz ?? firstLine?.frequencyHz ?? null,
-    highestCornerHz: HIGHEST_CORNER_SHARE * Math.min(quietSpectrum.rateHz, activeSpectrum.rateHz),
+    highestCornerHz: HIGHEST_CORNER_SHARE * rateHz,
     nominal: question.keepHz !== null && question.rejectHz !== null,
     evidence: layEvidence(activePowers, quietPowers, quietSpectrum, division),
   };

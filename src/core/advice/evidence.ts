@@ -7,7 +7,11 @@ import { densityAt } from './density.ts';
  * All arrays of one length; powers in unit².
  */
 export interface Evidence {
+  /** Rate at which the filter is to run, Hz. */
+  readonly rateHz: number;
   readonly frequencyHz: Float64Array;
+  /** tan(π·frequency/rate): where the bilinear transform puts each frequency on the analog axis. */
+  readonly tangent: Float64Array;
   /** Power of signal and noise together: measured where the signal is, the noise alone elsewhere. */
   readonly active: Float64Array;
   /** Power of the noise in use. */
@@ -24,8 +28,13 @@ export interface Evidence {
   readonly wienerPower: number;
 }
 
+/** Where the tangent is still a number to reckon with. */
+const NEARLY_NYQUIST = 0.4999;
+
 /** How signal and noise are told apart. */
 export interface Division {
+  /** Rate at which the filter is to run, Hz. */
+  readonly rateHz: number;
   /** Noise in use over noise when quiet, as a ratio of powers. */
   readonly noiseGainPower: number;
   readonly keep: Band;
@@ -44,7 +53,7 @@ export function layEvidence(
   active: BandPowers,
   quiet: BandPowers,
   quietSpectrum: Spectrum,
-  { noiseGainPower, keep, signalHighHz, inUse }: Division,
+  { rateHz, noiseGainPower, keep, signalHighHz, inUse }: Division,
 ): Evidence {
   const rows: [frequencyHz: number, active: number, noise: number, signal: number][] = [];
   const onlyInUse = (f: number) => inUse.some((band) => f >= band.lowHz && f <= band.highHz);
@@ -69,8 +78,11 @@ export function layEvidence(
   });
   const column = (index: 0 | 1 | 2 | 3) => Float64Array.from(rows, (row) => row[index]);
   const total = (index: 2 | 3) => rows.reduce((sum, row) => sum + row[index], 0);
+  const frequencyHz = column(0);
   return {
-    frequencyHz: column(0),
+    rateHz,
+    frequencyHz,
+    tangent: frequencyHz.map((f) => Math.tan(Math.PI * Math.min(f / rateHz, NEARLY_NYQUIST))),
     active: column(1),
     noise: column(2),
     signal: column(3),

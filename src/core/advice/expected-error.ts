@@ -17,6 +17,7 @@ export interface ExpectedError {
 /**
  * Expected mean-square error ∫ |1 − H·e^{jωτ}|² S_signal + |H|² S_noise df without needing the signal's own spectrum:
  * Σ |1 − H·e^{jωτ}|² P_active + Σ (2·Re(H·e^{jωτ}) − 1) P_noise has the same expectation (Stein 1981; Mallows 1973).
+ * H is the discrete filter that is simulated: the bilinear transform answers at f as the prototype at tan(πf/rate)/tan(π·corner/rate).
  * Never below the Wiener bound, which the estimate may undershoot by chance. The delay is the best one unless it is fixed.
  */
 export function expectedError(
@@ -25,7 +26,8 @@ export function expectedError(
   cornerHz: number,
   fixedDelaySeconds?: number,
 ): ExpectedError {
-  const { frequencyHz, active, noise, signal } = evidence;
+  const { rateHz, frequencyHz, tangent, active, noise, signal } = evidence;
+  const corner = Math.tan((Math.PI * cornerHz) / rateHz);
   const points = frequencyHz.length;
   const magnitude = new Float64Array(points);
   const phase = new Float64Array(points);
@@ -34,7 +36,7 @@ export function expectedError(
   let kept = 0;
   let noisePower = 0;
   for (let i = 0; i < points; i++) {
-    const [m, p] = respond(sections, frequencyHz[i] / cornerHz);
+    const [m, p] = respond(sections, tangent[i] / corner);
     magnitude[i] = m;
     phase[i] = p;
     const omega = 2 * Math.PI * frequencyHz[i];
@@ -43,8 +45,9 @@ export function expectedError(
     kept += signal[i] * m * m;
     noisePower += noise[i] * m * m;
   }
-  // Least squares of phase + ω·τ weighted by the signal: the τ that minimises the error to second order.
-  const delaySeconds = fixedDelaySeconds ?? (weight > 0 ? moment / weight : 0);
+  // Least squares of phase + ω·τ weighted by the signal comes near the best τ; Newton's method goes the rest of the way.
+  const start = weight > 0 ? moment / weight : 0;
+  const delaySeconds = fixedDelaySeconds ?? refineDelay(evidence, magnitude, phase, start);
   let errorPower = 0;
   for (let i = 0; i < points; i++) {
     const m = magnitude[i];
@@ -57,4 +60,28 @@ export function expectedError(
     signalKept: evidence.signalPower > 0 ? kept / evidence.signalPower : 1,
     delaySeconds,
   };
+}
+
+const ROUNDS = 3;
+
+/** Delay in seconds at which Σ signal·|H|·cos(phase + ω·delay) is largest, by Newton's method from `start`. */
+function refineDelay(evidence: Evidence, magnitude: Float64Array, phase: Float64Array, start: number): number {
+  const { frequencyHz, signal } = evidence;
+  let delay = start;
+  for (let round = 0; round < ROUNDS; round++) {
+    let slope = 0;
+    let curvature = 0;
+    for (let i = 0; i < signal.length; i++) {
+      if (signal[i] <= 0) continue;
+      const omega = 2 * Math.PI * frequencyHz[i];
+      const angle = phase[i] + omega * delay;
+      const weight = signal[i] * magnitude[i] * omega;
+      slope += weight * Math.sin(angle);
+      curvature += weight * omega * Math.cos(angle);
+    }
+    // Far from the maximum the curve bends the other way, and a step would lead off.
+    if (!(curvature > 0)) return delay;
+    delay -= slope / curvature;
+  }
+  return delay;
 }

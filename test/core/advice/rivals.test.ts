@@ -19,6 +19,7 @@ function contest(options: {
   const active = spectrumOf({ ...grid, density: (f) => (f <= keepHighHz ? 1 : 0) + disturbed(f) });
   const quiet = spectrumOf({ ...grid, density: disturbed });
   const evidence = layEvidence(powersOf(active), powersOf(quiet), quiet, {
+    rateHz,
     noiseGainPower: 1,
     keep: { lowHz: 0, highHz: keepHighHz },
     signalHighHz: keepHighHz,
