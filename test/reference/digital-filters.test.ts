@@ -1,12 +1,14 @@
 import { describe, expect, it } from 'vitest';
-import { discreteGainDb, discretise } from '../../src/core/filter/discretise.ts';
+import { discreteGain, discreteGainDb, discretePhaseRadians, discretise } from '../../src/core/filter/discretise.ts';
 import type { Family, Filter } from '../../src/core/filter/filter.ts';
+import { alphaForms, stepInvariantOnePole } from '../../src/core/filter/one-pole.ts';
 import { FilterFold } from '../../src/core/filter/run.ts';
 import reference from './digital-filters.json' with { type: 'json' };
+import vectors from './discrete-filters-scipy.json' with { type: 'json' };
 
 interface Design {
   inputs: { family: string; order: number; fc_Hz: number; fs_Hz: number };
-  expected: { f_Hz: number[]; abs_H: number[] };
+  expected: { f_Hz: number[]; abs_H: number[]; phase_deg: (number | null)[] };
 }
 
 const FAMILIES: Record<string, Family> = { butter: 'butterworth', bessel: 'bessel' };
@@ -21,16 +23,72 @@ const filterOf = ({ inputs }: Design): Filter => ({
   cornerHz: inputs.fc_Hz,
 });
 
+/** Distance between two wrapped phases, radians: half a turn up is half a turn down. */
+const turnedApart = (a: number, b: number) => Math.abs(Math.asin(Math.sin((a - b) / 2)) * 2);
+
 describe('bilinear, pre-warped designs against scipy.signal (computed with scipy 1.10)', () => {
   it('covers both families', () => {
     expect(new Set(designs.map(([, design]) => design.inputs.family))).toEqual(new Set(['butter', 'bessel']));
   });
 
-  it.each(designs)('%s: gain', (_id, design) => {
+  it.each(designs)('%s: gain and phase', (_id, design) => {
     const discrete = discretise(filterOf(design), design.inputs.fs_Hz);
     design.expected.f_Hz.forEach((f, i) => {
-      const gain = 10 ** (discreteGainDb(discrete, f) / 20);
-      expect(Math.abs(gain - design.expected.abs_H[i])).toBeLessThan(1e-9);
+      expect(Math.abs(discreteGain(discrete, f) - design.expected.abs_H[i])).toBeLessThan(1e-9);
+      const phase = design.expected.phase_deg[i];
+      // At half of the rate the gain is 0 and there is no phase.
+      if (phase !== null)
+        expect(turnedApart(discretePhaseRadians(discrete, f), (phase * Math.PI) / 180)).toBeLessThan(1e-8);
+    });
+  });
+});
+
+describe(`corners from a thousandth to nearly half of the rate against ${vectors.source} (${vectors.provenance})`, () => {
+  const { rateHz, shares } = vectors.inputs;
+  let seed = 20011;
+  const samples = Float64Array.from({ length: 50 }, (_, i) => {
+    seed = (16807 * seed) % 2147483647;
+    return seed / 2147483647 - 0.5 + (i >= 15 ? 2 : 0) + 9.81;
+  });
+
+  it.each(vectors.expected)('$family, order $order, corner $cornerHz Hz', (expected) => {
+    const { order, cornerHz } = expected;
+    const discrete = discretise({ shape: 'low-pass', family: expected.family as Family, order, cornerHz }, rateHz);
+    expect(discrete.sections).toHaveLength(expected.denominators.length);
+    for (const [a1, a2] of expected.denominators)
+      expect(Math.min(...discrete.sections.map((s) => Math.hypot(s.a1 - a1, s.a2 - a2)))).toBeLessThan(1e-12);
+    shares.forEach((share, i) => {
+      expect(Math.abs(discreteGain(discrete, share * rateHz) / expected.gain[i] - 1)).toBeLessThan(1e-9);
+      expect(turnedApart(discretePhaseRadians(discrete, share * rateHz), expected.phase[i])).toBeLessThan(1e-9);
+    });
+    new FilterFold(discrete).push(samples, true).forEach((value, i) => {
+      expect(Math.abs(value / expected.filtered[i] - 1)).toBeLessThan(1e-9);
+    });
+  });
+});
+
+describe('step-invariant one pole, α = 1 − e^(−T/RC)', () => {
+  const forms = reference['dig.ema.alpha'];
+
+  it.each(forms.expected)(
+    `rate %d Hz, corner %d Hz: α, and the corner that it makes (${forms.provenance})`,
+    (...row) => {
+      const [rateHz, cornerHz, exact, common, , , cornerOfExact, cornerOfCommon] = row as number[];
+      const found = alphaForms(cornerHz, rateHz);
+      expect(Math.abs(found.exact / exact - 1)).toBeLessThan(forms.tolerance.rel);
+      expect(Math.abs(found.common / common - 1)).toBeLessThan(forms.tolerance.rel);
+      expect(Math.abs(found.commonCornerError - (cornerOfCommon / cornerHz - 1))).toBeLessThan(1e-9);
+      const filter = stepInvariantOnePole(cornerHz, rateHz);
+      // Null where the gain has not fallen by 3 dB at half of the rate.
+      if (cornerOfExact === null) expect(discreteGain(filter, rateHz / 2)).toBeGreaterThan(Math.SQRT1_2);
+      else expect(Math.abs(discreteGain(filter, cornerOfExact) - Math.SQRT1_2)).toBeLessThan(1e-9);
+    },
+  );
+
+  it('answers a step as the analog pole does, one sample on: 1 − e^(−t/τ) (any circuits textbook)', () => {
+    const output = new FilterFold(stepInvariantOnePole(3, 50)).push(Float64Array.of(0, 1, 1, 1, 1), true);
+    output.forEach((value, i) => {
+      expect(Math.abs(value + Math.expm1((-2 * Math.PI * 3 * i) / 50))).toBeLessThan(1e-14);
     });
   });
 });

@@ -1,35 +1,57 @@
 import { hertz } from '../figure.ts';
 import { UserError } from '../user-error.ts';
+import { type Complex, divide, times } from './complex.ts';
 import { prototypeSections } from './families.ts';
 import type { DiscreteFilter, Filter, PrototypeSection, Section } from './filter.ts';
 
 /**
  * The filter at a sampling rate as second-order sections, the lowest Q first: bilinear transform, pre-warped so that the
  * gain at the corner stays −3.0103 dB (Oppenheim & Schafer, Discrete-Time Signal Processing, §7.2.2).
- * Throws UserError('usage') where the corner is not between 0 and half of the rate.
+ * Throws as `requireCornerBelowNyquist` does.
  */
 export function discretise(filter: Filter, rateHz: number): DiscreteFilter {
-  const { cornerHz } = filter;
-  if (!(cornerHz > 0 && cornerHz < rateHz / 2))
-    throw new UserError(
-      'usage',
-      `A corner of ${hertz(cornerHz, 3)} cannot be had at a rate of ${hertz(rateHz, 4)}; it must lie between 0 and ${hertz(rateHz / 2, 4)}.`,
-    );
-  const warped = Math.tan((Math.PI * cornerHz) / rateHz);
+  requireCornerBelowNyquist(filter.cornerHz, rateHz);
+  const warped = Math.tan((Math.PI * filter.cornerHz) / rateHz);
   const sections = prototypeSections(filter.family, filter.order).map((section) => bilinear(section, warped));
   return { rateHz, method: 'bilinear', sections };
 }
 
-/** Gain of the discrete filter at a frequency, dB, negative for loss: |H(e^{jω})| of the sections' product. */
+/** Throws UserError('usage') where a corner is not between 0 and half of the rate. */
+export function requireCornerBelowNyquist(cornerHz: number, rateHz: number): void {
+  if (cornerHz > 0 && cornerHz < rateHz / 2 && Number.isFinite(rateHz)) return;
+  throw new UserError(
+    'usage',
+    `A corner of ${hertz(cornerHz, 3)} cannot be had at a rate of ${hertz(rateHz, 4)}; it must lie between 0 and ${hertz(rateHz / 2, 4)}.`,
+  );
+}
+
+/** Gain of the discrete filter at a frequency, linear. */
+export function discreteGain(filter: DiscreteFilter, frequencyHz: number): number {
+  const { re, im } = transfer(filter, frequencyHz);
+  return Math.hypot(re, im);
+}
+
+/** Gain of the discrete filter at a frequency, dB, negative for loss. */
 export function discreteGainDb(filter: DiscreteFilter, frequencyHz: number): number {
-  const omega = (2 * Math.PI * frequencyHz) / filter.rateHz;
-  const power = (c0: number, c1: number, c2: number) => {
-    const re = c0 + c1 * Math.cos(omega) + c2 * Math.cos(2 * omega);
-    const im = c1 * Math.sin(omega) + c2 * Math.sin(2 * omega);
-    return re * re + im * im;
-  };
-  const gain = filter.sections.reduce((all, { b0, b1, b2, a1, a2 }) => (all * power(b0, b1, b2)) / power(1, a1, a2), 1);
-  return 10 * Math.log10(gain);
+  return 20 * Math.log10(discreteGain(filter, frequencyHz));
+}
+
+/** Phase of the discrete filter at a frequency, radians, between −π and π. */
+export function discretePhaseRadians(filter: DiscreteFilter, frequencyHz: number): number {
+  const { re, im } = transfer(filter, frequencyHz);
+  return Math.atan2(im, re);
+}
+
+/** H(e^{jω}): product of the sections. */
+function transfer({ rateHz, sections }: DiscreteFilter, frequencyHz: number): Complex {
+  const omega = (2 * Math.PI * frequencyHz) / rateHz;
+  const polynomial = (c0: number, c1: number, c2: number): Complex => ({
+    re: c0 + c1 * Math.cos(omega) + c2 * Math.cos(2 * omega),
+    im: -c1 * Math.sin(omega) - c2 * Math.sin(2 * omega),
+  });
+  return sections
+    .map(({ b0, b1, b2, a1, a2 }) => divide(polynomial(b0, b1, b2), polynomial(1, a1, a2)))
+    .reduce(times, { re: 1, im: 0 });
 }
 
 function bilinear({ frequency, q }: PrototypeSection, warped: number): Section {

@@ -31,8 +31,8 @@ export interface Section {
 /** A filter made discrete at one rate. */
 export interface DiscreteFilter {
   readonly rateHz: number;
-  /** Pre-warped at the corner. */
-  readonly method: 'bilinear';
+  /** `bilinear`: pre-warped at the corner. `step-invariant`: α = 1 − e^{−T/RC}, one pole only. */
+  readonly method: 'bilinear' | 'step-invariant';
   readonly sections: readonly Section[];
 }
 

@@ -26,10 +26,14 @@ export function respond(
   return [Math.sqrt(power), phase];
 }
 
+/** Gain at a frequency, linear. */
+export function gain(filter: Filter, frequencyHz: number): number {
+  return respond(prototypeSections(filter.family, filter.order), frequencyHz / filter.cornerHz)[0];
+}
+
 /** Gain at a frequency, dB, negative for loss. */
 export function gainDb(filter: Filter, frequencyHz: number): number {
-  const [magnitude] = respond(prototypeSections(filter.family, filter.order), frequencyHz / filter.cornerHz);
-  return 20 * Math.log10(magnitude);
+  return 20 * Math.log10(gain(filter, frequencyHz));
 }
 
 /** Phase at a frequency, radians, continuous from 0 at 0 Hz. */
