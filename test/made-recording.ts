@@ -30,6 +30,7 @@ export function madeRecording(options: {
       timeName: 'time',
       rateHz,
       jitterSeconds: 0,
+      stampResolutionSeconds: 0,
       resampled: false,
       durationSeconds: last.startSeconds + (last.samples[0].length - 1) / rateHz,
       longestRunSamples: Math.max(...runs.map((run) => run.samples[0].length)),
@@ -43,7 +44,14 @@ export function madeRecording(options: {
         for (let first = 0; first < samples[0].length; first += blockSamples) {
           const channels = samples.map((channel) => channel.slice(first, first + blockSamples));
           const length = channels[0].length;
-          yield { run, firstSample: first, startSeconds: startSeconds + first / rateHz, length, channels };
+          yield {
+            run,
+            firstSample: first,
+            startSeconds: startSeconds + first / rateHz,
+            length,
+            channels,
+            rows: channels,
+          };
         }
       }
     },

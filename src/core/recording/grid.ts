@@ -1,4 +1,5 @@
 import { LONGEST_BRIDGE } from './column-fold.ts';
+import { FreshRows } from './fresh-rows.ts';
 import { cubicWeights } from './interpolation.ts';
 import type { UniformBlock } from './recording.ts';
 import type { RowBatch } from './rows.ts';
@@ -35,6 +36,9 @@ export class Grid {
   private used = 0;
   private nextSample = 0;
   private left = 0;
+  /** Rows at or before the last sample, as they were logged, and how many of those held are among them already. */
+  private readonly fresh: FreshRows;
+  private taken = 0;
 
   /** `batchRows` is the most that a batch holds. */
   constructor(plan: GridPlan, batchRows: number) {
@@ -43,6 +47,7 @@ export class Grid {
     this.times = new Float64Array(batchRows + MARGIN);
     this.columns = empty(batchRows + MARGIN);
     this.output = plan.interpolate ? empty(plan.blockRows) : [];
+    this.fresh = new FreshRows(plan.interpolate ? plan.places.length : 0);
   }
 
   /** The blocks that a batch completes; each is valid until the next is taken. */
@@ -68,7 +73,7 @@ export class Grid {
 
   private startRun(): void {
     this.run++;
-    this.held = this.scanned = this.used = this.nextSample = this.left = 0;
+    this.held = this.scanned = this.used = this.nextSample = this.left = this.taken = 0;
   }
 
   private append(batch: RowBatch, from: number, rows: number, run: Run): void {
@@ -114,11 +119,8 @@ export class Grid {
   private *asTheyAre(run: Run): Generator<UniformBlock> {
     for (let from = this.used; from < this.scanned; from += this.plan.blockRows) {
       const to = Math.min(from + this.plan.blockRows, this.scanned);
-      yield this.block(
-        run,
-        this.columns.map((column) => column.subarray(from, to)),
-        to - from,
-      );
+      const channels = this.columns.map((column) => column.subarray(from, to));
+      yield this.block(run, channels, channels, to - from);
     }
     this.forget(this.scanned - 1);
     this.used = this.scanned;
@@ -134,6 +136,7 @@ export class Grid {
       filled = 0;
     }
     if (filled > 0) yield this.filledBlock(run, filled);
+    this.takeRows();
     this.forget(Math.min(this.left - 1, this.held - 4, this.scanned - 1));
   }
 
@@ -164,18 +167,22 @@ export class Grid {
   }
 
   private filledBlock(run: Run, length: number): UniformBlock {
-    return this.block(
-      run,
-      this.output.map((column) => column.subarray(0, length)),
-      length,
-    );
+    this.takeRows();
+    const channels = this.output.map((column) => column.subarray(0, length));
+    return this.block(run, channels, this.fresh.take(), length);
   }
 
-  private block(run: Run, channels: readonly Float64Array[], length: number): UniformBlock {
+  private takeRows(): void {
+    if (this.taken > this.left) return;
+    this.fresh.add(this.columns, this.taken, this.left + 1);
+    this.taken = this.left + 1;
+  }
+
+  private block(run: Run, channels: readonly Float64Array[], rows: Float64Array[], length: number): UniformBlock {
     const firstSample = this.nextSample;
     this.nextSample += length;
     const startSeconds = run.startSeconds + firstSample / this.plan.rateHz;
-    return { run: this.run, firstSample, startSeconds, length, channels };
+    return { run: this.run, firstSample, startSeconds, length, channels, rows };
   }
 
   /** Drops the first `rows` rows held. */
@@ -186,5 +193,6 @@ export class Grid {
     this.held -= rows;
     this.scanned -= rows;
     this.left = Math.max(0, this.left - rows);
+    this.taken = Math.max(0, this.taken - rows);
   }
 }

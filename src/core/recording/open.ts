@@ -87,6 +87,7 @@ function recordingOf(found: Survey, columns: readonly Column[], sha256: string):
     timeName: timeColumn.name,
     rateHz: time.rateHz,
     jitterSeconds: timeColumn.kind === 'none' ? 0 : time.longest.jitterSeconds,
+    stampResolutionSeconds: timeColumn.kind === 'none' ? 0 : found.rule.resolutionSeconds,
     resampled: time.uneven,
     durationSeconds: last.startSeconds + last.samples / time.rateHz,
     longestRunSamples,

@@ -79,6 +79,8 @@ export interface RecordingFacts {
   readonly rateHz: number;
   /** Standard deviation of the residual of the straight-line fit of stamps on row numbers over the longest run, seconds. */
   readonly jitterSeconds: number;
+  /** Resolution of the stamps, seconds; it makes q/√12 of the jitter. 0 where there are none. */
+  readonly stampResolutionSeconds: number;
   /** True where the stamps were uneven beyond 1 % of a period, so that `blocks()` interpolates. */
   readonly resampled: boolean;
   readonly durationSeconds: number;
@@ -103,6 +105,11 @@ export interface UniformBlock {
   readonly length: number;
   /** One array per channel of `facts.channels`, each `length` long, finite throughout. Owned by the reader: copy what is to be kept. */
   readonly channels: readonly Float64Array[];
+  /**
+   * The rows as they were logged since the block before, one array per channel: the very arrays of `channels` but where samples were
+   * interpolated. Rows behind the last sample of an interpolated run are in no block.
+   */
+  readonly rows: readonly Float64Array[];
 }
 
 /** A recording that has been surveyed once and can be replayed as often as needed. */
