@@ -80,11 +80,27 @@ export function envelope(options: {
   readonly order: number;
 }): ChartDataset<'line', Point[]>[] {
   const { label, colour, order, seconds } = options;
-  const points = (values: Float64Array) => Array.from(values, (y, i) => ({ x: seconds[i], y }));
+  const points = (values: Float64Array) => columns(seconds, values);
   return [
     curve({ label, points: points(options.high), colour, width: 1, order }),
     curve({ label: NAMELESS, points: points(options.low), colour, width: 1, order, fill: '-1' }),
   ];
+}
+
+/** Points of thinned columns; one alone between gaps becomes a short bar, as a curve of one point is not drawn. */
+function columns(seconds: Float64Array, values: Float64Array): Point[] {
+  const half = seconds.length > 1 ? (seconds[1] - seconds[0]) / 2 : 0;
+  const missing = (i: number) => i < 0 || i >= values.length || Number.isNaN(values[i]);
+  return Array.from(values).flatMap((y, i) => {
+    const alone = !missing(i) && missing(i - 1) && missing(i + 1);
+    const x = seconds[i];
+    return alone
+      ? [
+          { x: x - half, y },
+          { x: x + half, y },
+        ]
+      : [{ x, y }];
+  });
 }
 
 /** Paints the paper; the drawing library's own option breaks a second size in one bundle. */

@@ -8,12 +8,11 @@ export const COLOURS = {
   faint: '#566166',
   grid: '#dfe3e2',
   /** Before the filter, and the active recording. */
-  before: '#9aa5a9',
+  before: '#8a969a',
   /** Behind the filter. */
   after: '#0072b2',
   quiet: '#d55e00',
   floor: '#a8552a',
   gain: '#1d2427',
   keep: 'rgba(0, 158, 115, 0.14)',
-  mark: '#cc79a7',
 } as const;

@@ -57,7 +57,7 @@ ${study.channels.map((channel, place) => traces(channel, place, figure))}
 <h2 id="spectra">Spectra, keep band and noise lines</h2>
 ${study.channels.map(
   (channel, place) => html`<h3>${channel.channel.name}</h3>
-<div class="scroll wide" tabindex="0" role="region" aria-label="Spectra of ${channel.channel.name}">${figure(pictureIds(channel, place).spectrum, 'Triangles mark the noise lines found in the quiet recording; the shaded stretch is the keep band. The dashed curve is the gain of the filter, on the right-hand scale.')}</div>
+${figure(pictureIds(channel, place).spectrum, 'Triangles mark the noise lines found in the quiet recording; the shaded stretch is the keep band. The dashed curve is the gain of the filter, on the right-hand scale. Amplitude density is the square root of the power spectral density.')}
 ${linesTable(channel)}
 ${inUse(channel)}
 `,
@@ -65,14 +65,14 @@ ${inUse(channel)}
 </section>
 <section aria-labelledby="rivals">
 <h2 id="rivals">Rivals</h2>
-${study.channels.map(rivalsTable)}
+${study.channels.map((channel) => rivalsTable(channel, study.settings))}
 </section>
 ${healthSection(study)}
 ${cautionsSection(study)}
 ${reproduction(study, context)}
 <section aria-labelledby="sign">
 <h2 id="sign">Signed</h2>
-<div class="sign"><div>Name and function</div><div>Date and place</div><div>Signature</div><div>Reviewed by (safety functions)</div></div>
+<div class="sign"><div>Name and function</div><div>Date and signature</div><div>Reviewed by, name and function</div><div>Date and signature</div></div>
 </section>
 </main>
 </body>
@@ -97,7 +97,13 @@ function inUse({ inUse: bands }: ChannelStudy): Markup | '' {
 
 function figureOf(spec: ChartSpec | undefined, picture: Picture | undefined, caption: string): Markup {
   if (spec === undefined || picture === undefined) throw new RangeError('A picture of the report is missing');
-  return html`<figure><img src="${picture.png}" width="${spec.widthPx}" height="${spec.heightPx}" alt="${spec.description}"><figcaption>${caption}</figcaption></figure>
+  const img = html`<img src="${picture.png}" width="${spec.widthPx}" height="${spec.heightPx}" alt="${spec.description}">`;
+  const wide = spec.widthPx > 600;
+  // Wide pictures scroll on narrow screens, since their text could not be read if they were shrunk.
+  const shown = wide
+    ? html`<div class="scroll wide" tabindex="0" role="region" aria-label="${spec.title}">${img}</div>`
+    : img;
+  return html`<figure>${shown}<figcaption>${caption}</figcaption></figure>
 `;
 }
 
@@ -107,8 +113,10 @@ function reproduction(study: Study, context: ReportContext): Markup {
     ['Command', context.commandLine],
     ['Version', `Quietcorner ${study.version}`],
     ['Made', context.madeAt],
-    ['Quiet recording', `${study.quiet.file}, SHA-256 ${study.quiet.sha256}`],
-    ['Active recording', `${study.active.file}, SHA-256 ${study.active.sha256}`],
+    ['Quiet recording', study.quiet.file],
+    ['its SHA-256', study.quiet.sha256],
+    ['Active recording', study.active.file],
+    ['its SHA-256', study.active.sha256],
     ['Limits', `droop ${decibels(settings.droopDb)}, rejection ${decibels(settings.rejectionDb)}`],
     [
       'Keep band',
@@ -123,7 +131,7 @@ function reproduction(study: Study, context: ReportContext): Markup {
   return html`<section aria-labelledby="again">
 <h2 id="again">How to reproduce it</h2>
 <div class="scroll" tabindex="0" role="region" aria-label="How to reproduce this report">
-<table><caption>The same files, version and settings give the same figures.</caption>
+<table><caption><span>The same files, version and settings give the same figures.</span></caption>
 <tbody>${rows.map(([name, value]) => html`<tr><th scope="row">${name}</th><td class="text"><code>${value}</code></td></tr>\n`)}</tbody></table>
 </div>
 </section>`;

@@ -1,7 +1,7 @@
 import type { Plugin } from 'chart.js';
-import { decibels, hertz, quantity } from '../core/figure.ts';
+import { count, decibels, hertz, quantity } from '../core/figure.ts';
 import { gainDb } from '../core/filter/response.ts';
-import type { Spectrum } from '../core/spectrum/spectrum.ts';
+import type { NoiseLine, Spectrum } from '../core/spectrum/spectrum.ts';
 import type { ChannelStudy } from '../core/study-result.ts';
 import { FONT_FAMILY, linearAxis, logarithmicAxis, TEXT_PX } from './axis.ts';
 import { curve, curves } from './chart-base.ts';
@@ -12,6 +12,8 @@ import { COLOURS } from './colours.ts';
 const LOWEST_GAIN_DB = -100;
 /** Strongest lines that get a label; all get a tick. */
 const LABELLED_LINES = 6;
+/** Strongest lines that the text beside the picture names. */
+const DESCRIBED_LINES = 10;
 
 /** Spectra of both recordings and behind the filter, with keep band, noise lines, corner and the filter's gain over them. */
 export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
@@ -32,7 +34,8 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
           label: 'active',
           points: points(activeSpectrum, range.min),
           colour: COLOURS.before,
-          width: 2,
+          // Wider than what covers it, so that it shows on both sides.
+          width: 4,
           order: 4,
         }),
         curve({
@@ -54,7 +57,7 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
           label: 'active, filtered',
           points: points(filteredSpectrum, range.min),
           colour: COLOURS.after,
-          width: 2.5,
+          width: 2,
           order: 1,
         }),
         curve({
@@ -78,11 +81,17 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
 }
 
 function describe({ channel, lines, keep, advice }: ChannelStudy): string {
-  const named = lines.map((line) => `${hertz(line.frequencyHz, 3)} at ${quantity(line.amplitude, channel.unit)}`);
+  const strongest = strongestOf(lines, DESCRIBED_LINES);
+  const named = strongest.map((line) => `${hertz(line.frequencyHz, 3)} at ${quantity(line.amplitude, channel.unit)}`);
+  if (lines.length > named.length) named.push(`and ${count(lines.length - named.length)} weaker`);
   const kept =
     keep.highHz > 0 ? `Keep band ${hertz(keep.lowHz)} to ${hertz(keep.highHz, 3)}` : 'No keep band was found';
   const rejected = advice.rejectionDb === null ? '' : `, rejection ${decibels(advice.rejectionDb)} at the first line`;
   return `Amplitude densities of quiet, active and filtered recording of ${channel.name} over frequency. ${kept}. Noise lines: ${named.length > 0 ? named.join('; ') : 'none'}. Corner ${hertz(advice.cornerHz)}: droop ${decibels(advice.droopDb)}${rejected}.`;
+}
+
+function strongestOf(lines: readonly NoiseLine[], most: number): NoiseLine[] {
+  return [...lines].sort((a, b) => b.amplitude - a.amplitude).slice(0, most);
 }
 
 function points(spectrum: Spectrum, floor: number): Point[] {
@@ -121,7 +130,7 @@ function amplitudeRange({ quietSpectrum, activeSpectrum }: ChannelStudy): { min:
 /** Shades the keep band, marks the corner, and labels the noise lines along the upper edge. */
 function marks(study: ChannelStudy, cornerLabel: string): Plugin<'line'> {
   const { keep, lines, advice } = study;
-  const strongest = [...lines].sort((a, b) => b.amplitude - a.amplitude).slice(0, LABELLED_LINES);
+  const strongest = strongestOf(lines, LABELLED_LINES);
   return {
     id: 'marks',
     beforeDatasetsDraw({ ctx, chartArea, scales }) {
@@ -146,7 +155,7 @@ function marks(study: ChannelStudy, cornerLabel: string): Plugin<'line'> {
       let row = 0;
       for (const line of [...lines].sort((a, b) => a.frequencyHz - b.frequencyHz)) {
         const at = x.getPixelForValue(line.frequencyHz);
-        ctx.fillStyle = COLOURS.mark;
+        ctx.fillStyle = COLOURS.quiet;
         triangle(ctx, at, chartArea.top + 2);
         if (!strongest.includes(line)) continue;
         const label = hertz(line.frequencyHz, 3);
@@ -163,9 +172,10 @@ function marks(study: ChannelStudy, cornerLabel: string): Plugin<'line'> {
       ctx.moveTo(corner, chartArea.top);
       ctx.lineTo(corner, chartArea.bottom);
       ctx.stroke();
-      ctx.textAlign = 'left';
+      const fits = corner + 6 + ctx.measureText(cornerLabel).width < chartArea.right;
+      ctx.textAlign = fits ? 'left' : 'right';
       ctx.fillStyle = COLOURS.ink;
-      ctx.fillText(cornerLabel, corner + 6, chartArea.bottom - 28);
+      ctx.fillText(cornerLabel, fits ? corner + 6 : corner - 6, chartArea.bottom - 28);
       ctx.restore();
     },
   };

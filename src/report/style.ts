@@ -41,8 +41,9 @@ code { font: 0.88em ui-monospace, 'DejaVu Sans Mono', monospace; overflow-wrap: 
 .badge.compromise { color: var(--compromise); border-style: dashed; }
 .badge.inseparable { color: var(--inseparable); border-style: double; border-width: 3px; }
 .verdict p { margin-top: 0; }
-details { margin: 8px 0; }
-summary { cursor: pointer; color: var(--accent); }
+.corner.inseparable { font-weight: 400; color: var(--faint); }
+.reasons { display: grid; grid-template-columns: repeat(auto-fit, minmax(min(100%, 460px), 1fr)); gap: 0 40px; }
+.reasons h3 { margin-top: 14px; }
 .figures { display: flex; flex-wrap: wrap; gap: 6px 28px; margin: 10px 0 4px; padding: 0; }
 .figures div { min-width: 108px; }
 .figures dt { color: var(--faint); font-size: 0.85rem; }
@@ -57,14 +58,17 @@ section > .scroll + .scroll { margin-top: 36px; }
 .scroll:focus-visible { outline: 2px solid var(--accent); }
 table { border-collapse: collapse; width: 100%; font-size: 0.92rem; font-variant-numeric: tabular-nums; }
 caption { text-align: left; color: var(--faint); padding: 4px 0 8px; }
+/* Keeps to the window while the table scrolls under it. */
+caption span { display: inline-block; position: sticky; left: 0; max-width: min(100ch, calc(100vw - 34px)); }
 th, td { padding: 5px 14px 5px 0; text-align: right; border-bottom: 1px solid var(--line); vertical-align: top; white-space: nowrap; }
 th:first-child, td.text { text-align: left; }
 td.text, th.text { text-align: left; }
-td.text { white-space: normal; min-width: 16ch; }
-.wide img { min-width: 680px; }
-thead th { color: var(--faint); font-weight: 600; border-bottom-color: var(--ink); vertical-align: bottom; }
+td.text { white-space: normal; min-width: 22ch; }
+.wide img { min-width: 900px; }
+thead th { color: var(--faint); font-weight: 600; border-bottom-color: var(--ink); vertical-align: bottom; white-space: normal; line-height: 1.25; }
+tr > th:first-child { position: sticky; left: 0; background: var(--paper); }
 tbody th { font-weight: 500; }
-tr.chosen th, tr.chosen td { font-weight: 700; background: color-mix(in srgb, var(--accent) 12%, transparent); }
+tr.chosen > th, tr.chosen td { font-weight: 700; background: color-mix(in srgb, var(--accent) 12%, var(--paper)); }
 tr.chosen th::before { content: '▸ '; }
 .warning { border-left: 4px solid var(--compromise); padding-left: 12px; }
 .sign { display: grid; grid-template-columns: 1fr 1fr; gap: 34px 40px; margin-top: 24px; max-width: 900px; }
@@ -81,11 +85,19 @@ tr.chosen th::before { content: '▸ '; }
     --accent: #00496f; --clear: #004d39; --compromise: #6b3a00; --inseparable: #7d2410;
   }
   @page { margin: 16mm 14mm 18mm; @bottom-right { content: counter(page) ' / ' counter(pages); font-size: 9pt; } }
-  body { font-size: 10.5pt; }
+  body { font-size: 10pt; }
+  figcaption { font-size: 8.5pt; max-width: none; }
+  .figures { gap: 4px 16px; }
+  .figures div { min-width: 84px; }
   main { max-width: none; padding: 0; }
   h2, h3, caption { break-after: avoid; }
-  figure, .verdict, tr, .sign { break-inside: avoid; }
+  figure, .verdict, .reasons div, tr, .sign { break-inside: avoid; }
+  h2 { margin-top: 28px; }
+  thead { display: table-header-group; }
   .scroll { overflow: visible; }
+  .wide img { min-width: 0; }
+  caption span { max-width: none; position: static; }
+  tr > th:first-child { position: static; }
   table { font-size: 8.5pt; }
   th, td { padding-right: 8px; }
 }

@@ -55,8 +55,12 @@ export function insetChart(study: ChannelStudy, inset: Inset, id: string): Chart
   };
 }
 
+/** Longest name or unit that an axis of these heights holds, characters. */
+const LONGEST_TITLE = 20;
+
 function axisTitle(name: string, unit: string): string {
-  return unit === '' ? name : `${name}, ${unit}`;
+  const short = (text: string) => (text.length > LONGEST_TITLE ? `${text.slice(0, LONGEST_TITLE - 1)}…` : text);
+  return unit === '' ? short(name) : `${short(name)}, ${short(unit)}`;
 }
 
 function range({ low, high }: ThinnedTrace, unit: string): string {

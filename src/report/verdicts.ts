@@ -1,28 +1,39 @@
 import { verdictSentence } from '../core/advice/sentence.ts';
 import { decibels, hertz, percent, quantity, seconds, significant } from '../core/figure.ts';
+import type { RecordingFacts } from '../core/recording/recording.ts';
 import type { ChannelStudy, Study } from '../core/study-result.ts';
 import { html, type Markup } from './markup.ts';
 
-/** What comes first: for each channel the corner, the verdict in one sentence, its figures and its reasons. */
+/** What comes first: for each channel the corner, the verdict in one sentence and its figures; then the warnings, then the reasons. */
 export function verdictSection(study: Study): Markup {
-  const warned = study.channels.flatMap((channel) => channel.notes).concat(study.notes);
-  const warnings = warned.filter((note) => note.severity === 'warning');
   return html`<section aria-labelledby="verdict">
 <h2 id="verdict">Which filter</h2>
 ${study.channels.map(channelVerdict)}
-${warnings.map((note) => html`<p class="warning"><strong>Mind this:</strong> ${note.text}</p>\n`)}
+${warnings(study).map((text) => html`<p class="warning"><strong>Mind this:</strong> ${text}</p>\n`)}
+</section>
+<section aria-labelledby="why">
+<h2 id="why">Why, and what it costs</h2>
+<div class="reasons">${study.channels.map(({ channel, advice }) => html`<div><h3>${channel.name}</h3><ul>${advice.reasons.map((reason) => html`<li>${reason}</li>`)}</ul></div>\n`)}</div>
 </section>`;
+}
+
+/** What a reader must know before trusting the verdicts. */
+function warnings(study: Study): string[] {
+  const ofFile = ({ file, notes }: RecordingFacts) => notes.map((note) => ({ ...note, text: `${file}: ${note.text}` }));
+  const ofPair = [...study.notes, ...study.channels.flatMap((channel) => channel.notes)];
+  return [...ofPair, ...ofFile(study.quiet), ...ofFile(study.active)]
+    .filter((note) => note.severity === 'warning')
+    .map((note) => note.text);
 }
 
 function channelVerdict({ channel, keep, advice }: ChannelStudy): Markup {
   const [low, high] = advice.cornerRangeHz;
   return html`<div class="verdict">
 <h3>${channel.name}<span class="badge ${advice.verdict}">${advice.verdict}</span></h3>
-<div class="corner">${hertz(advice.cornerHz)}<small>corner (−3 dB cutoff)</small><small>90 % interval ${hertz(low, 3)} to ${hertz(high, 3)}</small></div>
+<div class="corner ${advice.verdict}">${hertz(advice.cornerHz)}<small>${advice.verdict === 'inseparable' ? 'corner of least harm' : 'corner (−3 dB cutoff)'}</small><small>90 % interval ${hertz(low, 3)} to ${hertz(high, 3)}</small></div>
 <div>
 <p>${verdictSentence(channel.unit, keep, advice)}</p>
 <dl class="figures">${figures(channel.unit, advice).map(([name, value]) => html`<div><dt>${name}</dt><dd>${value}</dd></div>`)}</dl>
-<details open><summary>Why, and what it costs</summary><ul>${advice.reasons.map((reason) => html`<li>${reason}</li>`)}</ul></details>
 </div>
 </div>
 `;

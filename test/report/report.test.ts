@@ -4,6 +4,8 @@ import type { Study } from '../../src/core/study-result.ts';
 import type { Point } from '../../src/report/chart-spec.ts';
 import { reportCharts } from '../../src/report/charts.ts';
 import { renderReport } from '../../src/report/html.ts';
+import { spectrumChart } from '../../src/report/spectrum-chart.ts';
+import { overviewChart } from '../../src/report/trace-charts.ts';
 import { madeRecording } from '../made-recording.ts';
 
 const HOSTILE = '<script>alert(1)</script>"onload=\'=cmd|';
@@ -20,7 +22,7 @@ function uniform(start: number): () => number {
 }
 
 /** One channel with a line at 20 Hz, 100 Hz sampled; in use it moves below 1 Hz, with a gap and one lone peak. */
-async function madeStudy(withLine: boolean): Promise<Study> {
+async function madeStudy(withLine: boolean, rejectionDb = 20): Promise<Study> {
   const draw = uniform(77);
   const noise = (i: number) => draw() + (withLine ? Math.sin((2 * Math.PI * 30 * i) / 100) : 0);
   const quiet = Float64Array.from({ length: 12000 }, (_, i) => noise(i));
@@ -35,7 +37,7 @@ async function madeStudy(withLine: boolean): Promise<Study> {
     ],
   });
   const made = { ...options, runs: [{ startSeconds: 0, samples: [quiet] }] };
-  return study({ quiet: madeRecording(made), active, settings: SETTINGS, version: '0.0.0' });
+  return study({ quiet: madeRecording(made), active, settings: { ...SETTINGS, rejectionDb }, version: '0.0.0' });
 }
 
 const pagesOf = (found: Study) =>
@@ -44,6 +46,10 @@ const pagesOf = (found: Study) =>
     reportCharts(found).map(({ id }) => ({ id, png: PIXEL })),
     CONTEXT,
   );
+
+/** The last column of the rivals. */
+const limitsOf = (page: string) =>
+  [...page.matchAll(/<td class="text">((?:chosen, )?(?:keeps|misses)[^<]*)</g)].map((match) => match[1]);
 
 describe('the report', () => {
   let found: Study;
@@ -68,6 +74,7 @@ describe('the report', () => {
     const headings = [...page.matchAll(/<h2[^>]*>([^<]+)</g)].map((match) => match[1]);
     expect(headings).toEqual([
       'Which filter',
+      'Why, and what it costs',
       'Before and after',
       'Spectra, keep band and noise lines',
       'Rivals',
@@ -105,6 +112,22 @@ describe('the report', () => {
     expect(page.match(/<tr class="chosen">/g)).toHaveLength(1);
   });
 
+  it('puts rivals that keep every limit first, and says by how much the others miss', async () => {
+    const some = await madeStudy(true, 50);
+    const missing = some.channels[0].rivals.filter((rival) => rival.fails.length > 0);
+    const rows = limitsOf(pagesOf(some));
+    expect(missing.length).toBeGreaterThan(0);
+    expect(rows.filter((row) => /^misses .*by \d/.test(row))).toHaveLength(missing.length);
+    expect(rows[0]).toBe('chosen, keeps all');
+    expect(rows.findIndex((row) => row.startsWith('misses'))).toBe(rows.length - missing.length);
+  });
+
+  it('puts the chosen rival first where none keeps every limit', async () => {
+    const none = pagesOf(await madeStudy(true, 400));
+    expect(none).toContain('None keeps every limit');
+    expect(limitsOf(none)[0]).toMatch(/^chosen, misses .*rejection by \d/);
+  });
+
   it('refuses to leave a picture out', () => {
     expect(() => renderReport(found, [], CONTEXT)).toThrow(/picture/);
   });
@@ -116,6 +139,43 @@ describe('the report', () => {
     const inGap = points.filter(({ x }) => x > 85 && x < 195);
     expect(inGap.length).toBeGreaterThan(100);
     expect(inGap.every(({ y }) => Number.isNaN(y))).toBe(true);
+  });
+
+  it('draws a column that stands alone between gaps as a bar', () => {
+    const [channel] = found.channels;
+    const alone = Float64Array.of(1, Number.NaN, 5, Number.NaN, 2, 2);
+    const trace = { seconds: Float64Array.of(1, 2, 3, 4, 5, 6), low: alone, high: alone };
+    const lonely = { ...channel, simulation: { ...channel.simulation, before: trace } };
+    const points = overviewChart(lonely, 'a').config.data.datasets[0].data as unknown as Point[];
+    expect(points.filter(({ y }) => y === 5).map(({ x }) => x)).toEqual([2.5, 3.5]);
+    expect(points.filter(({ y }) => y === 2).map(({ x }) => x)).toEqual([5, 6]);
+  });
+
+  it('names the strongest lines beside a picture of many', () => {
+    const [channel] = found.channels;
+    const lines = Array.from({ length: 30 }, (_, i) => ({ ...channel.lines[0], frequencyHz: i + 1, amplitude: i + 1 }));
+    const { description } = spectrumChart({ ...channel, lines }, 'a');
+    expect(description).toContain('30.0 Hz at 30.0 ');
+    expect(description).toContain('and 20 weaker');
+    expect(description).not.toMatch(/\b3\.00 Hz at/);
+  });
+
+  it('says where the quiet recording was used, which jitter matters, and what mains could have folded', () => {
+    const [channel] = found.channels;
+    const quietPart = { usedSeconds: 9, totalSeconds: 12, stretches: [{ fromSeconds: 1, toSeconds: 10 }] };
+    const line = { ...channel.lines[0], frequencyHz: 50, foldedFrom: [{ frequencyHz: 150, mains: 'mains 50 Hz × 3' }] };
+    const odd = {
+      ...found,
+      quiet: { ...found.quiet, jitterSeconds: 1e-9, notes: [{ severity: 'warning', text: 'loud <b>' }] },
+      active: { ...found.active, jitterSeconds: 1e-3 },
+      channels: [{ ...channel, quietPart, lines: [line], lineGains: [channel.lineGains[0]] }],
+    } as Study;
+    const text = pagesOf(odd).replaceAll('\u00a0', ' ');
+    expect(text).toContain('9.00 s of 12.0 s of the quiet recording carry the noise figures (1.00 s to 10.0 s)');
+    expect(text).toContain('show no jitter (under 0.001 % of a period)');
+    expect(text).toContain('Jitter of the stamps 1.00 ms (10 % of a period)');
+    expect(text).toMatch(/Lines that mains could have folded into: 50.00 Hz of .* \(mains 50 Hz × 3 at 150.0 Hz\)/);
+    expect(text).toMatch(/Mind this:<\/strong> .*loud &lt;b&gt;/);
   });
 
   it('prints sensibly where there is no noise line', async () => {
