@@ -22,7 +22,7 @@ export class FilterFold {
 
   /** Filters consecutive samples into a fresh array of the same length; `startsRun` where the first of them starts a run. */
   push(samples: Float64Array, startsRun: boolean): Float64Array {
-    if (startsRun && samples.length > 0) {
+    if (startsRun) {
       this.level = samples[0];
       this.state.fill(0);
     }

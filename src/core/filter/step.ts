@@ -80,11 +80,9 @@ function turningPoints(terms: readonly StepTerm[], end: number): readonly number
   const slopes = terms.map(({ pole, residue }) => ({ pole, residue: times(pole, residue) }));
   const slope = (t: number) => sumAt(slopes, t);
   const turns: number[] = [];
-  for (let t = STEP; t + STEP < end; t += STEP) {
-    if (slope(t) > 0 === slope(t + STEP) > 0) continue;
-    // Up to half of its end value the answer of an all-pole low-pass only rises: a turn there is rounding.
-    if (sumAt(terms, t) > -0.5) turns.push(bisect(slope, t, t + STEP));
-  }
+  // With −3 dB at 1 no answer turns before 1; near 0 the slope of a high order would be rounding alone.
+  for (let t = 1; t + STEP < end; t += STEP)
+    if (slope(t) > 0 !== slope(t + STEP) > 0) turns.push(bisect(slope, t, t + STEP));
   return turns;
 }
 

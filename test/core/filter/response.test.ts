@@ -116,6 +116,7 @@ describe('wrong use', () => {
     (cornerHz) => {
       expect(() => discretise({ shape: 'low-pass', family: 'bessel', order: 2, cornerHz }, 100)).toThrow(UserError);
       expect(() => stepInvariantOnePole(cornerHz, 100)).toThrow(UserError);
+      expect(() => stepInvariantOnePole(1, Number.POSITIVE_INFINITY)).toThrow(UserError);
     },
   );
 
