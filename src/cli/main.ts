@@ -13,6 +13,12 @@ const program = new Command('quietcorner')
   .showHelpAfterError('(--help lists what there is)')
   .configureOutput({ outputError: (text, write) => write(text.replace(/^error: /, 'quietcorner: ')) });
 
+// A reader that has seen enough, such as `head`, is no fault.
+process.stdout.on('error', (error: NodeJS.ErrnoException) => {
+  if (error.code === 'EPIPE') process.exit(EXIT.done);
+  throw error;
+});
+
 let exitCode: number = EXIT.done;
 
 program

@@ -1,5 +1,5 @@
 import { verdictSentence } from '../core/advice/sentence.ts';
-import { count, decibels, hertz, quantity, seconds } from '../core/figure.ts';
+import { corner, count, decibels, hertz, quantity, seconds } from '../core/figure.ts';
 import type { RecordingFacts } from '../core/recording/recording.ts';
 import { understood } from '../core/recording/understood.ts';
 import type { NoiseLine } from '../core/spectrum/spectrum.ts';
@@ -36,7 +36,7 @@ function recordingLine(role: string, facts: RecordingFacts, ink: Ink): string {
 function channelLines({ channel, keep, advice, lines }: ChannelStudy, ink: Ink): string[] {
   const tint = { clear: ink.good, compromise: ink.careful, inseparable: ink.bad }[advice.verdict];
   const [low, high] = advice.cornerRangeHz;
-  const head = `${ink.bold(channel.name)}  ${tint(advice.verdict)}  corner ${ink.bold(hertz(advice.cornerHz))} ${ink.faint(`(90 % interval ${hertz(low, 3)} to ${hertz(high, 3)})`)}`;
+  const head = `${ink.bold(channel.name)}  ${tint(advice.verdict)}  corner ${ink.bold(corner(advice.cornerHz))} ${ink.faint(`(90 % interval ${hertz(low, 3)} to ${hertz(high, 3)})`)}`;
   return [
     head,
     ...wrap(verdictSentence(channel.unit, keep, advice)),

@@ -17,6 +17,12 @@ export function hertz(valueHz: number, digits = 2): string {
   return `${significant(valueHz, digits)} Hz`;
 }
 
+/** A corner as it is built: `3.0 Hz` where two digits say it exactly, `185 Hz` or `2.86 Hz` where it takes three. */
+export function corner(valueHz: number): string {
+  const exact = Math.abs(Number(valueHz.toPrecision(2)) / valueHz - 1) < 1e-9;
+  return hertz(valueHz, exact ? 2 : 3);
+}
+
 /** `20.4 dB`, one decimal. */
 export function decibels(valueDb: number): string {
   return Number.isFinite(valueDb) ? `${minus(valueDb.toFixed(1))} dB` : `${significant(valueDb)} dB`;

@@ -34,7 +34,8 @@ export function pairChannels(quiet: RecordingFacts, active: RecordingFacts, sett
       'input',
       `${quiet.file} and ${active.file} have no channel in common: ${names(quiet)} against ${names(active)}; give two recordings of the same sensor.`,
     );
-  const channels = settings.channels === null ? common : settings.channels.map((name) => named(common, name));
+  const channels =
+    settings.channels === null ? common : [...new Set(settings.channels.map((name) => named(common, name)))];
   checkSettings(Math.min(quiet.rateHz, active.rateHz), settings);
   return {
     channels,

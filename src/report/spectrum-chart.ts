@@ -1,5 +1,5 @@
 import type { Plugin } from 'chart.js';
-import { count, decibels, hertz, quantity } from '../core/figure.ts';
+import { corner, decibels, hertz, quantity } from '../core/figure.ts';
 import { gainDb } from '../core/filter/response.ts';
 import type { NoiseLine, Spectrum } from '../core/spectrum/spectrum.ts';
 import type { ChannelStudy } from '../core/study-result.ts';
@@ -75,7 +75,7 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
         y: logarithmicAxis('left', `amplitude density${unit}`, range),
         gain: linearAxis('right', 'gain, dB', { min: LOWEST_GAIN_DB, max: 10, grid: false }),
       },
-      [marks(study, `corner ${hertz(advice.cornerHz)}`)],
+      [marks(study, `corner ${corner(advice.cornerHz)}`)],
     ),
   };
 }
@@ -87,7 +87,7 @@ function describe({ channel, lines, keep, advice }: ChannelStudy): string {
   const kept =
     keep.highHz > 0 ? `Keep band ${hertz(keep.lowHz)} to ${hertz(keep.highHz, 3)}` : 'No keep band was found';
   const rejected = advice.rejectionDb === null ? '' : `, rejection ${decibels(advice.rejectionDb)} at the first line`;
-  return `Amplitude densities of quiet, active and filtered recording of ${channel.name} over frequency. ${kept}. Noise lines: ${named.length > 0 ? named.join('; ') : 'none'}. Corner ${hertz(advice.cornerHz)}: droop ${decibels(advice.droopDb)}${rejected}.`;
+  return `Amplitude densities of quiet, active and filtered recording of ${channel.name} over frequency. ${kept}. Noise lines: ${named.length > 0 ? named.join('; ') : 'none'}. Corner ${corner(advice.cornerHz)}: droop ${decibels(advice.droopDb)}${rejected}.`;
 }
 
 function strongestOf(lines: readonly NoiseLine[], most: number): NoiseLine[] {

@@ -1,5 +1,5 @@
 import type { LimitName, Limits, Rival } from '../core/advice/advice.ts';
-import { decibels, hertz, quantity, seconds, significant } from '../core/figure.ts';
+import { corner, decibels, hertz, quantity, seconds, significant } from '../core/figure.ts';
 import type { ChannelStudy } from '../core/study-result.ts';
 import { html, type Markup } from './markup.ts';
 
@@ -38,7 +38,7 @@ function rivalRow(rival: Rival, row: { unit: string; limits: Limits; chosen: boo
   const { unit, chosen } = row;
   const missed = rival.fails.map((name) => `${name} by ${significant(shortfallDb(rival, name, row.limits), 2)} dB`);
   const limits = missed.length === 0 ? 'keeps all' : `misses ${missed.join(' and ')}`;
-  return html`<tr${chosen ? html` class="chosen"` : ''}><th scope="row">${FAMILY_NAMES[rival.family]}</th><td>${rival.order}</td><td>${hertz(rival.cornerHz, 3)}</td><td>${decibels(rival.droopDb)}</td><td>${rival.rejectionDb === null ? 'no line' : decibels(rival.rejectionDb)}</td><td>${quantity(rival.noiseAfterRms, unit)}</td><td>${quantity(Math.sqrt(rival.errorPower), unit)}</td><td>${significant(rival.wienerRatio, 2)}×</td><td>${seconds(rival.delaySeconds)}</td><td>${seconds(rival.settlingSeconds)}</td><td class="text">${chosen ? 'chosen, ' : ''}${limits}</td></tr>
+  return html`<tr${chosen ? html` class="chosen"` : ''}><th scope="row">${FAMILY_NAMES[rival.family]}</th><td>${rival.order}</td><td>${corner(rival.cornerHz)}</td><td>${decibels(rival.droopDb)}</td><td>${rival.rejectionDb === null ? 'no line' : decibels(rival.rejectionDb)}</td><td>${quantity(rival.noiseAfterRms, unit)}</td><td>${quantity(Math.sqrt(rival.errorPower), unit)}</td><td>${significant(rival.wienerRatio, 2)}×</td><td>${seconds(rival.delaySeconds)}</td><td>${seconds(rival.settlingSeconds)}</td><td class="text">${chosen ? 'chosen, ' : ''}${limits}</td></tr>
 `;
 }
 

@@ -1,4 +1,4 @@
-import { hertz, percent, quantity, seconds } from '../core/figure.ts';
+import { corner, percent, quantity, seconds } from '../core/figure.ts';
 import type { ChannelStudy, Inset, ThinnedTrace } from '../core/study-result.ts';
 import { linearAxis } from './axis.ts';
 import { curve, curves, envelope } from './chart-base.ts';
@@ -39,7 +39,7 @@ export function insetChart(study: ChannelStudy, inset: Inset, id: string): Chart
   return {
     id,
     title: `${name}: ${inset.title.toLowerCase()}`,
-    description: `${inset.title} of ${name}, ${seconds(from)} to ${seconds(to)}, every sample before and after the filter; peak to peak ${quantity(spread(inset.before), unit)} before, ${quantity(spread(inset.after), unit)} after (${percent(left)}). The delay of ${seconds(study.advice.delaySeconds)} is visible; corner ${hertz(study.advice.cornerHz)}.`,
+    description: `${inset.title} of ${name}, ${seconds(from)} to ${seconds(to)}, every sample before and after the filter; peak to peak ${quantity(spread(inset.before), unit)} before, ${quantity(spread(inset.after), unit)} after (${percent(left)}). The delay of ${seconds(study.advice.delaySeconds)} is visible; corner ${corner(study.advice.cornerHz)}.`,
     widthPx: 552,
     heightPx: 270,
     config: curves(

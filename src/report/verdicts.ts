@@ -1,5 +1,5 @@
 import { verdictSentence } from '../core/advice/sentence.ts';
-import { decibels, hertz, percent, quantity, seconds, significant } from '../core/figure.ts';
+import { corner, decibels, hertz, percent, quantity, seconds, significant } from '../core/figure.ts';
 import type { RecordingFacts } from '../core/recording/recording.ts';
 import type { ChannelStudy, Study } from '../core/study-result.ts';
 import { html, type Markup } from './markup.ts';
@@ -30,7 +30,7 @@ function channelVerdict({ channel, keep, advice }: ChannelStudy): Markup {
   const [low, high] = advice.cornerRangeHz;
   return html`<div class="verdict">
 <h3>${channel.name}<span class="badge ${advice.verdict}">${advice.verdict}</span></h3>
-<div class="corner ${advice.verdict}">${hertz(advice.cornerHz)}<small>${advice.verdict === 'inseparable' ? 'corner of least harm' : 'corner (−3 dB cutoff)'}</small><small>90 % interval ${hertz(low, 3)} to ${hertz(high, 3)}</small></div>
+<div class="corner ${advice.verdict}">${corner(advice.cornerHz)}<small>${advice.verdict === 'inseparable' ? 'corner of least harm' : 'corner (−3 dB cutoff)'}</small><small>90 % interval ${hertz(low, 3)} to ${hertz(high, 3)}</small></div>
 <div>
 <p>${verdictSentence(channel.unit, keep, advice)}</p>
 <dl class="figures">${figures(channel.unit, advice).map(([name, value]) => html`<div><dt>${name}</dt><dd>${value}</dd></div>`)}</dl>

@@ -1,4 +1,4 @@
-import { decibels, hertz, percent, quantity, seconds, significant } from '../figure.ts';
+import { corner, decibels, hertz, percent, quantity, seconds, significant } from '../figure.ts';
 import { filterName } from '../filter/name.ts';
 import type { Band, NoiseLine } from '../spectrum/spectrum.ts';
 import type { KeepBand, Rival } from './advice.ts';
@@ -76,7 +76,7 @@ function intervalSentence({ choice: { rival }, contest }: Findings): string {
     contest.firstLineHz === null
       ? `${hertz(highHz, 3)} (what the sampling rate carries)`
       : `${hertz(highHz, 3)} (rejection)`;
-  return `Between ${hertz(lowHz, 3)} (droop) and ${upper}, ${hertz(rival.cornerHz, 3)} is the round corner of least expected error.`;
+  return `Between ${hertz(lowHz, 3)} (droop) and ${upper}, ${corner(rival.cornerHz)} is the round corner of least expected error.`;
 }
 
 function overlapSentences({ choice, lines, keep, contest, unit }: Findings): string[] {
