@@ -1,5 +1,5 @@
 import type { Plugin } from 'chart.js';
-import { corner, decibels, hertz, quantity } from '../core/figure.ts';
+import { corner, count, decibels, hertz, quantity } from '../core/figure.ts';
 import { gainDb } from '../core/filter/response.ts';
 import type { NoiseLine, Spectrum } from '../core/spectrum/spectrum.ts';
 import type { ChannelStudy } from '../core/study-result.ts';
