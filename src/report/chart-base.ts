@@ -30,8 +30,9 @@ export function curves(
           labels: {
             color: COLOURS.ink,
             font: { size: TEXT_PX, family: FONT_FAMILY },
-            boxHeight: 1,
-            boxWidth: 28,
+            // A short stretch of each curve, with its width and dashes.
+            usePointStyle: true,
+            pointStyleWidth: 34,
             filter: (item) => item.text !== NAMELESS,
             sort: (a, b) => (a.datasetIndex ?? 0) - (b.datasetIndex ?? 0),
           },
@@ -62,6 +63,7 @@ export function curve(options: {
     borderWidth: options.width,
     borderDash: options.dash ?? [],
     pointRadius: 0,
+    pointStyle: 'line',
     tension: 0,
     spanGaps: false,
     yAxisID: options.axis ?? 'y',

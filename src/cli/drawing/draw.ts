@@ -1,7 +1,9 @@
 import { createRequire } from 'node:module';
+import type { Plugin } from 'chart.js';
 import { ChartJSNodeCanvas } from 'chartjs-node-canvas';
 import { FONT_FAMILY } from '../../report/axis.ts';
 import type { ChartSpec } from '../../report/chart-spec.ts';
+import { type Pixels, palettePng } from './palette-png.ts';
 
 /** Dots per pixel of the page: crisp on fine screens and on paper, at an acceptable size. */
 const SCALE = 1.5;
@@ -16,8 +18,26 @@ export async function drawPictures(specs: readonly ChartSpec[]): Promise<Map<str
 }
 
 async function draw({ widthPx, heightPx, config }: ChartSpec): Promise<Buffer> {
-  const scaled = { ...config, options: { ...config.options, devicePixelRatio: SCALE } };
-  return rendererOf(widthPx, heightPx).renderToBuffer(scaled as Parameters<ChartJSNodeCanvas['renderToBuffer']>[0]);
+  const taken: Pixels[] = [];
+  const scaled = {
+    ...config,
+    options: { ...config.options, devicePixelRatio: SCALE },
+    plugins: [...(config.plugins ?? []), taker(taken)],
+  };
+  const configuration = scaled as Parameters<ChartJSNodeCanvas['renderToBuffer']>[0];
+  // Only the pixels are wanted: the renderer's PNG, in full colour, makes reports too large to mail, and its JPEG is made sooner.
+  await rendererOf(widthPx, heightPx).renderToBuffer(configuration, 'image/jpeg');
+  return palettePng(taken[taken.length - 1]);
+}
+
+/** Takes the pixels of the finished picture. */
+function taker(taken: Pixels[]): Plugin<'line'> {
+  return {
+    id: 'taker',
+    afterRender({ ctx }) {
+      taken.push(ctx.getImageData(0, 0, ctx.canvas.width, ctx.canvas.height));
+    },
+  };
 }
 
 function rendererOf(width: number, height: number): ChartJSNodeCanvas {
