@@ -1,4 +1,4 @@
-import type { ChartConfiguration, ChartDataset, ChartOptions, Plugin } from 'chart.js';
+import type { ChartConfiguration, ChartDataset, ChartOptions, LegendItem, Plugin } from 'chart.js';
 import { FONT_FAMILY, TEXT_PX } from './axis.ts';
 import type { Point } from './chart-spec.ts';
 import { COLOURS } from './colours.ts';
@@ -33,8 +33,7 @@ export function curves(
             // A short stretch of each curve, with its width and dashes.
             usePointStyle: true,
             pointStyleWidth: 34,
-            filter: (item) => item.text !== NAMELESS,
-            sort: (a, b) => (a.datasetIndex ?? 0) - (b.datasetIndex ?? 0),
+            generateLabels: ({ data }) => legendOf(data.datasets as ChartDataset<'line'>[]),
           },
         },
         tooltip: { enabled: false },
@@ -42,6 +41,24 @@ export function curves(
     },
     plugins: [background(), ...plugins],
   };
+}
+
+function legendOf(datasets: readonly ChartDataset<'line'>[]): LegendItem[] {
+  return datasets.flatMap((dataset, datasetIndex) =>
+    dataset.label === NAMELESS
+      ? []
+      : [
+          {
+            text: dataset.label as string,
+            datasetIndex,
+            fontColor: COLOURS.ink,
+            strokeStyle: dataset.borderColor as string,
+            lineWidth: dataset.borderWidth as number,
+            lineDash: dataset.borderDash as number[],
+            pointStyle: 'line',
+          },
+        ],
+  );
 }
 
 /** One curve. `dash` and `width` tell it apart where colour cannot. */
@@ -63,7 +80,6 @@ export function curve(options: {
     borderWidth: options.width,
     borderDash: options.dash ?? [],
     pointRadius: 0,
-    pointStyle: 'line',
     tension: 0,
     spanGaps: false,
     yAxisID: options.axis ?? 'y',

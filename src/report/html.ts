@@ -65,6 +65,7 @@ ${inUse(channel)}
 </section>
 <section aria-labelledby="rivals">
 <h2 id="rivals">Rivals</h2>
+<p>Each stands at its own best corner within the limits: droop at most ${decibels(study.settings.droopDb)}, rejection at least ${decibels(study.settings.rejectionDb)}. The error is what is expected against the delayed signal, distortion and noise together; its power is also given as a multiple of the Wiener bound, which no linear filter can beat.</p>
 ${study.channels.map((channel) => rivalsTable(channel, study.settings))}
 </section>
 ${healthSection(study)}

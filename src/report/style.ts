@@ -14,6 +14,7 @@ export const STYLE = `
 * { box-sizing: border-box; }
 body {
   margin: 0; background: var(--ground); color: var(--ink);
+  overflow-wrap: break-word;
   font: 16px/1.5 system-ui, -apple-system, 'Segoe UI', 'DejaVu Sans', sans-serif;
 }
 main { max-width: 1184px; margin: 0 auto; padding: 28px 32px 56px; background: var(--paper); }
@@ -27,7 +28,7 @@ li { margin: 4px 0; }
 a { color: var(--accent); }
 code { font: 0.88em ui-monospace, 'DejaVu Sans Mono', monospace; overflow-wrap: anywhere; }
 .verdict {
-  display: grid; grid-template-columns: 200px 1fr; gap: 4px 28px;
+  display: grid; grid-template-columns: 200px minmax(0, 1fr); gap: 4px 28px;
   padding: 18px 0; border-top: 1px solid var(--line);
 }
 .verdict h3 { margin: 0; grid-column: 1 / -1; }
@@ -75,7 +76,7 @@ tr.chosen th::before { content: '▸ '; }
 .sign div { border-bottom: 1px solid var(--ink); min-height: 2.4em; color: var(--faint); font-size: 0.85rem; }
 @media (max-width: 720px) {
   main { padding: 18px 16px 40px; }
-  .verdict, .pair, .sign { grid-template-columns: 1fr; }
+  .verdict, .pair, .sign { grid-template-columns: minmax(0, 1fr); }
   h2 { margin-top: 36px; }
 }
 @media print {

@@ -27,7 +27,7 @@ export function rivalsTable({ channel, rivals, advice }: ChannelStudy, limits: L
     : 'None keeps every limit: the chosen one comes first, the others by their error.';
   return html`<div class="scroll" tabindex="0" role="region" aria-label="Rivals for ${channel.name}">
 <table>
-<caption><span>Rivals for ${channel.name}, each at its own best corner. ${sorting} Limits: droop at most ${decibels(limits.droopDb)}, rejection at least ${decibels(limits.rejectionDb)}. Error: expected against the delayed signal, distortion and noise together; its power stands beside it as a multiple of the Wiener bound.</span></caption>
+<caption><span>Rivals for ${channel.name}. ${sorting}</span></caption>
 <thead><tr><th scope="col">filter</th><th scope="col">order</th><th scope="col">corner</th><th scope="col">droop</th><th scope="col">rejection</th><th scope="col">noise in use, after, RMS</th><th scope="col">error, RMS</th><th scope="col">× Wiener bound</th><th scope="col">delay</th><th scope="col">settling to 1 %</th><th scope="col" class="text">limits</th></tr></thead>
 <tbody>${sorted.map((rival) => rivalRow(rival, { unit: channel.unit, limits, chosen: chosen(rival) }))}</tbody>
 </table>
