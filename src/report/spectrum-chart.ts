@@ -21,7 +21,6 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
   const minHz = Math.min(quietSpectrum.frequencyHz[0], activeSpectrum.frequencyHz[0]);
   const maxHz = Math.max(quietSpectrum.rateHz, activeSpectrum.rateHz) / 2;
   const range = amplitudeRange(study);
-  const unit = channel.unit === '' ? '' : `, ${channel.unit}/√Hz`;
   return {
     id,
     title: `${channel.name}: spectra, and the filter's gain over them`,
@@ -72,7 +71,7 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
       ],
       {
         x: logarithmicAxis('bottom', 'frequency, Hz', { min: minHz, max: maxHz }),
-        y: logarithmicAxis('left', `amplitude density${unit}`, range),
+        y: logarithmicAxis('left', `amplitude density, ${perRootHertz(channel.unit)}`, range),
         gain: linearAxis('right', 'gain, dB', { min: LOWEST_GAIN_DB, max: 10, grid: false }),
       },
       [marks(study, `corner ${corner(advice.cornerHz)}`)],
@@ -88,6 +87,11 @@ function describe({ channel, lines, keep, advice }: ChannelStudy): string {
     keep.highHz > 0 ? `Keep band ${hertz(keep.lowHz)} to ${hertz(keep.highHz, 3)}` : 'No keep band was found';
   const rejected = advice.rejectionDb === null ? '' : `, rejection ${decibels(advice.rejectionDb)} at the first line`;
   return `Amplitude densities of quiet, active and filtered recording of ${channel.name} over frequency. ${kept}. Noise lines: ${named.length > 0 ? named.join('; ') : 'none'}. Corner ${corner(advice.cornerHz)}: droop ${decibels(advice.droopDb)}${rejected}.`;
+}
+
+function perRootHertz(unit: string): string {
+  if (unit === '') return '1/√Hz';
+  return unit.includes('/') ? `(${unit})/√Hz` : `${unit}/√Hz`;
 }
 
 function strongestOf(lines: readonly NoiseLine[], most: number): NoiseLine[] {

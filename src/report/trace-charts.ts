@@ -55,12 +55,20 @@ export function insetChart(study: ChannelStudy, inset: Inset, id: string): Chart
   };
 }
 
-/** Longest name or unit that an axis of these heights holds, characters. */
-const LONGEST_TITLE = 20;
+/** Longest title that an axis of these heights holds, characters. */
+const LONGEST_TITLE = 22;
 
 function axisTitle(name: string, unit: string): string {
-  const short = (text: string) => (text.length > LONGEST_TITLE ? `${text.slice(0, LONGEST_TITLE - 1)}…` : text);
-  return unit === '' ? short(name) : `${short(name)}, ${short(unit)}`;
+  if (unit === '') return shortened(name, LONGEST_TITLE);
+  const short = shortened(unit, LONGEST_TITLE / 2);
+  return `${shortened(name, LONGEST_TITLE - short.length - 2)}, ${short}`;
+}
+
+/** Leaves out the middle, since names often differ at their ends. */
+function shortened(text: string, longest: number): string {
+  if (text.length <= longest) return text;
+  const head = Math.ceil((longest - 1) / 2);
+  return `${text.slice(0, head)}…${text.slice(text.length - (longest - 1 - head))}`;
 }
 
 function range({ low, high }: ThinnedTrace, unit: string): string {

@@ -151,6 +151,20 @@ describe('the report', () => {
     expect(points.filter(({ y }) => y === 2).map(({ x }) => x)).toEqual([5, 6]);
   });
 
+  it('gives amplitude densities their unit, and long names room on the axes', () => {
+    const [channel] = found.channels;
+    const titleOf = (name: string, unit: string, draw: typeof overviewChart) => {
+      const { config } = draw({ ...channel, channel: { name, unit, column: 2 } }, 'a');
+      return (config.options?.scales?.['y'] as { title: { text: string } } | undefined)?.title.text;
+    };
+    expect(titleOf('a', 'm/s²', spectrumChart)).toBe('amplitude density, (m/s²)/√Hz');
+    expect(titleOf('a', 'V', spectrumChart)).toBe('amplitude density, V/√Hz');
+    expect(titleOf('a', '', spectrumChart)).toBe('amplitude density, 1/√Hz');
+    expect(titleOf('sway_x', 'm/s²', overviewChart)).toBe('sway_x, m/s²');
+    expect(titleOf('raw_acceleration_x_gs', 'g', overviewChart)).toBe('raw_accel…tion_x_gs, g');
+    expect(titleOf('n'.repeat(99), 'u'.repeat(99), overviewChart)).toHaveLength(22);
+  });
+
   it('names the strongest lines beside a picture of many', () => {
     const [channel] = found.channels;
     const lines = Array.from({ length: 30 }, (_, i) => ({ ...channel.lines[0], frequencyHz: i + 1, amplitude: i + 1 }));
