@@ -31,7 +31,7 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
       [
         curve({
           label: 'active',
-          points: points(activeSpectrum, range.min),
+          points: points(activeSpectrum),
           colour: COLOURS.before,
           // Wider than what covers it, so that it shows on both sides.
           width: 4,
@@ -39,14 +39,14 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
         }),
         curve({
           label: 'quiet',
-          points: points(quietSpectrum, range.min),
+          points: points(quietSpectrum),
           colour: COLOURS.quiet,
           width: 1.5,
           order: 3,
         }),
         curve({
           label: 'noise floor',
-          points: floorPoints(study, range.min),
+          points: floorPoints(study),
           colour: COLOURS.floor,
           width: 1.5,
           dash: [2, 3],
@@ -54,7 +54,7 @@ export function spectrumChart(study: ChannelStudy, id: string): ChartSpec {
         }),
         curve({
           label: 'active, filtered',
-          points: points(filteredSpectrum, range.min),
+          points: points(filteredSpectrum),
           colour: COLOURS.after,
           width: 2,
           order: 1,
@@ -98,25 +98,20 @@ function strongestOf(lines: readonly NoiseLine[], most: number): NoiseLine[] {
   return [...lines].sort((a, b) => b.amplitude - a.amplitude).slice(0, most);
 }
 
-function points(spectrum: Spectrum, floor: number): Point[] {
-  return Array.from(spectrum.frequencyHz, (x, i) => ({ x, y: above(floor, Math.sqrt(spectrum.density[i])) }));
+/** What lies below the picture is clipped at its edge. */
+function points({ frequencyHz, density }: Spectrum): Point[] {
+  return Array.from(frequencyHz, (x, i) => ({ x, y: Math.sqrt(density[i]) }));
 }
 
-function floorPoints({ quietSpectrum, floorDensity }: ChannelStudy, floor: number): Point[] {
-  return Array.from(quietSpectrum.frequencyHz, (x, i) => ({ x, y: above(floor, Math.sqrt(floorDensity[i])) }));
-}
-
-/** A curve that leaves the picture is broken there, not drawn along its edge. */
-function above(floor: number, value: number): number {
-  return value < floor ? Number.NaN : value;
+function floorPoints({ quietSpectrum, floorDensity }: ChannelStudy): Point[] {
+  return points({ ...quietSpectrum, density: floorDensity });
 }
 
 function gainPoints({ advice }: ChannelStudy, minHz: number, maxHz: number): Point[] {
   const count = 240;
   return Array.from({ length: count }, (_, i) => {
     const x = minHz * (maxHz / minHz) ** (i / (count - 1));
-    const y = gainDb(advice, x);
-    return { x, y: y < LOWEST_GAIN_DB ? Number.NaN : y };
+    return { x, y: gainDb(advice, x) };
   });
 }
 
