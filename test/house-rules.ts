@@ -18,6 +18,7 @@ const PARTS: Readonly<Record<string, readonly string[]>> = {
 const CORE_PARTS: Readonly<Record<string, readonly string[]>> = {
   recording: [],
   spectrum: ['recording'],
+  health: ['recording', 'spectrum'],
   filter: ['recording'],
   advice: ['recording', 'spectrum', 'filter'],
   simulation: ['recording', 'spectrum', 'filter', 'advice', 'study-result.ts'],

@@ -7,6 +7,7 @@ import type { Band } from '../core/spectrum/spectrum.ts';
 import { type StudyInput, study } from '../core/study.ts';
 import { type StudyFiles, studyDocument } from '../core/study-document.ts';
 import type { Study, StudySettings } from '../core/study-result.ts';
+import { studyWarnings } from '../core/study-warnings.ts';
 import { reportCharts } from '../report/charts.ts';
 import { renderReport } from '../report/html.ts';
 import { drawPictures } from './drawing/draw.ts';
@@ -15,7 +16,7 @@ import { fileSource } from './file-source.ts';
 import { filteredCsv } from './filtered-csv.ts';
 import { inkFor } from './ink.ts';
 import { prepareFolder, writeWhole } from './output-files.ts';
-import { summary, warnings } from './summary.ts';
+import { summary } from './summary.ts';
 import { VERSION } from './version.ts';
 
 /** Options of `advise` as commander hands them over. */
@@ -47,7 +48,7 @@ export async function advise(quietPath: string, activePath: string, options: Adv
     await writePlan(done, (text) => createHash('sha256').update(text).digest('hex')),
   );
   await writeWhole(files.report as string, await reportOf(done));
-  for (const text of warnings(done)) process.stderr.write(`warning: ${text}\n`);
+  for (const { severity, text } of studyWarnings(done)) process.stderr.write(`${severity}: ${text}\n`);
   if (options.json) process.stdout.write(`${JSON.stringify(studyDocument(done, files), null, 2)}\n`);
   else process.stdout.write(summary(done, files, inkFor(process.stdout, process.env)));
   const refused = options.strict && done.channels.some((channel) => channel.advice.verdict === 'inseparable');

@@ -3,6 +3,7 @@ import type { AdviseOptions } from './advise.ts';
 import { EXIT, report } from './exit.ts';
 import { band, collect, positive } from './options.ts';
 import { VERSION } from './version.ts';
+import type { VetOptions } from './vet.ts';
 
 const program = new Command('quietcorner')
   .description(
@@ -42,6 +43,21 @@ program
   .action(async (quiet: string, active: string, options: AdviseOptions) => {
     const { advise } = await import('./advise.ts');
     exitCode = await advise(quiet, active, options);
+  });
+
+program
+  .command('vet')
+  .summary('say what is wrong with recordings: clipping, stuck values, spikes, drift, jitter, mains ...')
+  .description(
+    'Reads each recording, says what was understood of it, and lists what is wrong with it: the measured figure, where, what it does to the advice, and what can be done. Severities are note, warning and refusal.',
+  )
+  .argument('<file...>', 'CSV recordings')
+  .option('--channel <NAME>', 'examine this channel only; may be given several times', collect)
+  .option('--rate <HZ>', 'sampling rate in Hz for recordings without a time column', positive('--rate'))
+  .option('--json', 'print the result as one JSON document instead')
+  .action(async (files: string[], options: VetOptions) => {
+    const { vet } = await import('./vet.ts');
+    exitCode = await vet(files, options);
   });
 
 try {

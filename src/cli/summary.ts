@@ -6,9 +6,9 @@ import type { NoiseLine } from '../core/spectrum/spectrum.ts';
 import type { StudyFiles } from '../core/study-document.ts';
 import type { ChannelStudy, Study } from '../core/study-result.ts';
 import type { Ink } from './ink.ts';
+import { wrap } from './wrap.ts';
 
 const MOST_LINES = 4;
-const WIDTH = 100;
 
 /** The one-screen summary of a study for people: advice, lines, cost and files. Ends in a newline. */
 export function summary(study: Study, files: StudyFiles, ink: Ink): string {
@@ -18,15 +18,6 @@ export function summary(study: Study, files: StudyFiles, ink: Ink): string {
     fileLines(files, ink),
   ];
   return `\n${blocks.map((lines) => lines.join('\n')).join('\n\n')}\n`;
-}
-
-/** Findings that a user should see before trusting the advice, a line each; for stderr. */
-export function warnings(study: Study): string[] {
-  const ofFile = ({ file, notes }: RecordingFacts) => notes.map((note) => ({ ...note, text: `${file}: ${note.text}` }));
-  const ofPair = [...study.notes, ...study.channels.flatMap((channel) => channel.notes)];
-  return [...ofFile(study.quiet), ...ofFile(study.active), ...ofPair]
-    .filter((note) => note.severity === 'warning')
-    .map((note) => note.text);
 }
 
 function recordingLine(role: string, facts: RecordingFacts, ink: Ink): string {
@@ -64,17 +55,4 @@ function fileLines(files: StudyFiles, ink: Ink): string[] {
     ['filtered', files.filtered],
   ];
   return rows.flatMap(([label, path]) => (path === null ? [] : [`${ink.faint(label)}  ${path}`]));
-}
-
-/** Breaks a sentence at blanks to the width of a terminal, indented. */
-function wrap(text: string): string[] {
-  const lines: string[] = [];
-  let line = '';
-  for (const word of text.split(' ')) {
-    if (line !== '' && line.length + 1 + word.length > WIDTH - 2) {
-      lines.push(`  ${line}`);
-      line = word;
-    } else line = line === '' ? word : `${line} ${word}`;
-  }
-  return [...lines, `  ${line}`];
 }

@@ -1,5 +1,6 @@
 import { count, hertz } from './figure.ts';
-import type { Channel, Note, RecordingFacts } from './recording/recording.ts';
+import type { Finding } from './health/finding.ts';
+import type { Channel, RecordingFacts } from './recording/recording.ts';
 import type { StudySettings } from './study-result.ts';
 import { UserError } from './user-error.ts';
 
@@ -14,7 +15,7 @@ export interface PairedChannel {
 /** The channels to be studied and what is odd about the pair. */
 export interface Pair {
   readonly channels: readonly PairedChannel[];
-  readonly notes: readonly Note[];
+  readonly findings: readonly Finding[];
 }
 
 const RATE_TOLERANCE = 0.01;
@@ -39,7 +40,11 @@ export function pairChannels(quiet: RecordingFacts, active: RecordingFacts, sett
   checkSettings(Math.min(quiet.rateHz, active.rateHz), settings);
   return {
     channels,
-    notes: [...rateNotes(quiet, active), ...unitNotes(quiet, active, channels), ...partnerNotes(quiet, active)],
+    findings: [
+      ...rateFindings(quiet, active),
+      ...unitFindings(quiet, active, channels),
+      ...partnerFindings(quiet, active),
+    ],
   };
 }
 
@@ -64,23 +69,40 @@ function checkSettings(rateHz: number, { keepHz, rejectHz }: StudySettings): voi
     );
 }
 
-function rateNotes(quiet: RecordingFacts, active: RecordingFacts): Note[] {
+function rateFindings(quiet: RecordingFacts, active: RecordingFacts): Finding[] {
   if (Math.abs(quiet.rateHz / active.rateHz - 1) <= RATE_TOLERANCE) return [];
-  const text = `The recordings were sampled at different rates, ${hertz(quiet.rateHz, 4)} quiet and ${hertz(active.rateHz, 4)} active; noise above the lower Nyquist frequency is not compared.`;
-  return [{ severity: 'warning', text }];
+  return [
+    {
+      kind: 'rates differ',
+      severity: 'warning',
+      channel: null,
+      what: `The recordings were sampled at different rates, ${hertz(quiet.rateHz, 4)} quiet and ${hertz(active.rateHz, 4)} active.`,
+      effect: 'Noise above the lower Nyquist frequency is not compared, and folds down to other places in either.',
+      advice: 'Record both at one rate, the one at which the filter will run.',
+    },
+  ];
 }
 
-function unitNotes(quiet: RecordingFacts, active: RecordingFacts, channels: readonly PairedChannel[]): Note[] {
+function unitFindings(quiet: RecordingFacts, active: RecordingFacts, channels: readonly PairedChannel[]): Finding[] {
   return channels.flatMap(({ quietIndex, activeIndex }) => {
     const a = quiet.channels[quietIndex];
     const b = active.channels[activeIndex];
     if (a.unit === b.unit) return [];
-    const text = `Channel "${b.name}" is in "${a.unit}" when quiet and in "${b.unit}" in use; make sure that both are the same quantity.`;
-    return [{ severity: 'warning' as const, text }];
+    return [
+      {
+        kind: 'units differ' as const,
+        severity: 'warning' as const,
+        channel: b.name,
+        what: `It is in "${a.unit}" when quiet and in "${b.unit}" in use.`,
+        effect:
+          'The two are compared as they stand: where their units are not of one size, noise and signal are weighed wrong.',
+        advice: 'Make sure that both are the same quantity in the same unit.',
+      },
+    ];
   });
 }
 
-function partnerNotes(quiet: RecordingFacts, active: RecordingFacts): Note[] {
+function partnerFindings(quiet: RecordingFacts, active: RecordingFacts): Finding[] {
   const lonely = (one: RecordingFacts, other: RecordingFacts) =>
     one.channels.filter((a) => !other.channels.some((b) => b.name.toLowerCase() === a.name.toLowerCase()));
   return [
@@ -89,8 +111,16 @@ function partnerNotes(quiet: RecordingFacts, active: RecordingFacts): Note[] {
   ].flatMap(([one, other]) => {
     const alone = lonely(one, other);
     if (alone.length === 0) return [];
-    const text = `${count(alone.length)} channel${alone.length > 1 ? 's' : ''} of ${one.file} without a partner in ${other.file} left out: ${alone.map((channel) => `"${channel.name}"`).join(', ')}.`;
-    return [{ severity: 'note' as const, text }];
+    return [
+      {
+        kind: 'no partner' as const,
+        severity: 'note' as const,
+        channel: null,
+        what: `${count(alone.length)} channel${alone.length > 1 ? 's' : ''} of ${one.file} without a partner in ${other.file}: ${alone.map((channel) => `"${channel.name}"`).join(', ')}.`,
+        effect: 'They are left out.',
+        advice: 'Give them the same name in both files, if they should be studied.',
+      },
+    ];
   });
 }
 

@@ -22,6 +22,7 @@ export function studyDocument(study: Study, files: StudyFiles) {
     quiet: recordingDocument(study.quiet),
     active: recordingDocument(study.active),
     channels: study.channels.map(channelDocument),
+    findings: study.findings,
     files,
   };
 }
@@ -31,7 +32,7 @@ function recordingDocument(facts: RecordingFacts) {
   return { file, sha256, rows, rateHz, jitterSeconds, gaps, notes };
 }
 
-function channelDocument({ channel, lines, keep, advice, rivals }: ChannelStudy) {
+function channelDocument({ channel, lines, keep, advice, rivals, findings }: ChannelStudy) {
   return {
     name: channel.name,
     unit: channel.unit,
@@ -72,5 +73,6 @@ function channelDocument({ channel, lines, keep, advice, rivals }: ChannelStudy)
         fails,
       }),
     ),
+    findings,
   };
 }

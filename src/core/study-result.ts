@@ -1,6 +1,7 @@
 import type { Advice, KeepBand, Limits, Rival } from './advice/advice.ts';
 import type { DiscreteFilter } from './filter/filter.ts';
-import type { Channel, Note, RecordingFacts } from './recording/recording.ts';
+import type { Finding } from './health/finding.ts';
+import type { Channel, RecordingFacts } from './recording/recording.ts';
 import type { Band, NoiseLine, Spectrum } from './spectrum/spectrum.ts';
 
 /** What a user may set for the main job; every value as used, defaults filled in. */
@@ -48,6 +49,14 @@ export interface QuietPart {
   readonly stretches: readonly { readonly fromSeconds: number; readonly toSeconds: number }[];
 }
 
+/** How finely a channel can be told. */
+export interface Resolution {
+  /** Step in which the quiet recording is written, in the channel's unit; null where none shows. */
+  readonly step: number | null;
+  /** Bits of an ideal converter over the range in use whose rounding makes the quiet noise. */
+  readonly effectiveBits: number;
+}
+
 /** Gain at a noise line, computed for the discrete filter and measured on the quiet recording. */
 export interface LineGain {
   readonly frequencyHz: number;
@@ -79,7 +88,9 @@ export interface ChannelStudy {
   readonly rivals: readonly Rival[];
   readonly discrete: DiscreteFilter;
   readonly simulation: Simulation;
-  readonly notes: readonly Note[];
+  readonly resolution: Resolution;
+  /** What is wrong or odd about the channel in either recording, the worst first. */
+  readonly findings: readonly Finding[];
 }
 
 /** The whole result of the main job: plain data, from which report, JSON, plan and terminal text are made. */
@@ -89,6 +100,6 @@ export interface Study {
   readonly quiet: RecordingFacts;
   readonly active: RecordingFacts;
   readonly channels: readonly ChannelStudy[];
-  /** Findings about the pair as a whole: different rates, swapped, channels without a partner. */
-  readonly notes: readonly Note[];
+  /** About the pair as a whole: different rates and units, channels without a partner, missing samples. */
+  readonly findings: readonly Finding[];
 }

@@ -2,21 +2,23 @@ import type { Advice } from './advice/advice.ts';
 import { type Answer, advise } from './advice/advise.ts';
 import { expectedError } from './advice/expected-error.ts';
 import { reasons } from './advice/reasons.ts';
-import { decibels, hertz, percent, seconds, significant } from './figure.ts';
+import { channelFindings } from './channel-findings.ts';
 import { discretise } from './filter/discretise.ts';
 import { prototypeSections } from './filter/families.ts';
 import type { DiscreteFilter } from './filter/filter.ts';
+import { bySeverity } from './health/finding.ts';
+import { missingFinding } from './health/gaps.ts';
+import { effectiveBits } from './health/quantisation.ts';
 import { type ActiveEvidence, listenActive, listenQuiet, type QuietEvidence } from './listening.ts';
 import { type PairedChannel, pairChannels } from './pair.ts';
-import { interpolationLossDb } from './recording/interpolation.ts';
-import type { Note, Recording, RecordingFacts } from './recording/recording.ts';
+import type { Recording, RecordingFacts } from './recording/recording.ts';
 import { chooseInsets, type InsetPlace } from './simulation/inset.ts';
 import { type FilteredSink, simulateOnActive } from './simulation/on-active.ts';
 import { type MeasuredNoise, simulateOnQuiet } from './simulation/on-quiet.ts';
 import { noiseFloor } from './spectrum/floor.ts';
 import { findLines } from './spectrum/lines.ts';
 import type { NoiseLine } from './spectrum/spectrum.ts';
-import type { ChannelStudy, Study, StudySettings } from './study-result.ts';
+import type { ChannelStudy, Resolution, Study, StudySettings } from './study-result.ts';
 
 /** What a study is made from. */
 export interface StudyInput {
@@ -64,13 +66,18 @@ export async function study({ quiet, active, settings, version, sink }: StudyInp
     worked.map((work, i) => ({ index: work.paired.activeIndex, filter: discrete[i], insets: work.insets })),
     sink,
   );
+  const findings = bySeverity(
+    [...pair.findings, missingFinding(quiet.facts, 'quiet'), missingFinding(active.facts, 'active')].filter(
+      (finding) => finding !== null,
+    ),
+  );
   const channels = worked.map((work, i) => ({
     ...describe(work, measured[i], active.facts),
     filteredSpectrum: simulated[i].spectrum,
     discrete: discrete[i],
     simulation: simulated[i].simulation,
   }));
-  return { version, settings, quiet: quiet.facts, active: active.facts, channels, notes: pair.notes };
+  return { version, settings, quiet: quiet.facts, active: active.facts, channels, findings };
 }
 
 async function workOut(
@@ -110,8 +117,7 @@ async function workOut(
 
 type Described = Omit<ChannelStudy, 'filteredSpectrum' | 'discrete' | 'simulation'>;
 
-function describe(work: Worked, measured: MeasuredNoise, { rateHz, resampled }: RecordingFacts): Described {
-  const resampledRateHz = resampled ? rateHz : null;
+function describe(work: Worked, measured: MeasuredNoise, activeFacts: RecordingFacts): Described {
   const { answer, lines } = work;
   const { quietSpectrum, activeSpectrum, keep, inUse, rivals } = answer;
   return {
@@ -125,9 +131,10 @@ function describe(work: Worked, measured: MeasuredNoise, { rateHz, resampled }: 
     lineGains: measured.lineGains,
     keep,
     inUse,
-    advice: adviceOf(work, measured, rateHz),
+    advice: adviceOf(work, measured, activeFacts.rateHz),
     rivals,
-    notes: channelNotes(work, resampledRateHz),
+    findings: channelFindings({ ...work, channel: work.paired.channel, activeFacts }),
+    resolution: resolution(work),
   };
 }
 
@@ -160,37 +167,13 @@ function adviceOf({ answer, lines, paired }: Worked, measured: MeasuredNoise, ra
   };
 }
 
-function channelNotes({ paired, quiet, answer }: Worked, resampledRateHz: number | null): Note[] {
-  const notes: Note[] = [];
-  const { name } = paired.channel;
-  const { usedSeconds, totalSeconds } = quiet.part;
-  if (quiet.reason !== null)
-    notes.push({
-      severity: 'warning',
-      text: `Channel "${name}": the quiet recording is not stationary (${quiet.reason}); ${seconds(usedSeconds)} of ${seconds(totalSeconds)} are used for the noise figures.`,
-    });
-  const ratio = totalPower(answer.quietSpectrum) / totalPower(answer.activeSpectrum);
-  if (ratio > 1.5)
-    notes.push({
-      severity: 'warning',
-      text: `Channel "${name}" is louder in the quiet recording than in the active one (by ${decibels(10 * Math.log10(ratio))}): are the two swapped, or was quiet not quiet?`,
-    });
-  if (resampledRateHz !== null && answer.keep.highHz > 0)
-    notes.push({
-      severity: 'note',
-      text: `Channel "${name}": interpolating the uneven samples costs up to ${significant(interpolationLossDb(answer.keep.highHz / resampledRateHz), 2)} dB at the keep-band edge of ${hertz(answer.keep.highHz, 3)}.`,
-    });
-  const inBand = answer.contest.evidence.noiseInBandPower / answer.contest.evidence.signalPower;
-  if (Number.isFinite(inBand) && inBand > 0.01)
-    notes.push({
-      severity: 'note',
-      text: `Channel "${name}": noise within the keep band amounts to ${percent(inBand)} of the signal's power there, and no filter of this kind removes it.`,
-    });
-  return notes;
-}
-
-function totalPower({ density, widthHz }: Answer['quietSpectrum']): number {
-  return density.reduce((sum, value, i) => sum + value * widthHz[i], 0);
+/** The step in which the quiet recording is written, and what its noise leaves of the range in use. */
+function resolution({ quiet, active }: Worked): Resolution {
+  const { lowest, highest } = active.judged.figures.quantisation;
+  return {
+    step: quiet.judged.figures.quantisation.step,
+    effectiveBits: effectiveBits(highest - lowest, quiet.judged.subject.noiseRms),
+  };
 }
 
 /** Some eight periods of the keep-band edge, so that a movement can be followed by eye, but no fewer samples than make a picture. */

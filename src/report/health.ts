@@ -1,7 +1,9 @@
-import { count, hertz, percent, seconds } from '../core/figure.ts';
+import { count, hertz, percent, quantity, seconds, significant } from '../core/figure.ts';
+import { bySeverity } from '../core/health/finding.ts';
 import type { RecordingFacts } from '../core/recording/recording.ts';
 import { understood } from '../core/recording/understood.ts';
 import type { ChannelStudy, Study } from '../core/study-result.ts';
+import { findingsTable } from './findings.ts';
 import { html, type Markup } from './markup.ts';
 
 /** Jitter below this share of a period is rounding in the last digits. */
@@ -9,13 +11,15 @@ const NO_JITTER = 1e-5;
 
 /** What was understood of both files, what is odd about them, and which part of the quiet one was used. */
 export function healthSection(study: Study): Markup {
+  const findings = bySeverity([...study.findings, ...study.channels.flatMap((channel) => channel.findings)]);
   return html`<section aria-labelledby="health">
 <h2 id="health">Health of the recordings</h2>
 ${recording('Quiet', study.quiet)}
 ${recording('Active', study.active)}
+<h3>Findings</h3>
+${findingsTable(findings, 'the pair and its channels')}
 <h3>The pair</h3>
 <ul>
-${[...study.notes, ...study.channels.flatMap((channel) => channel.notes)].map((note) => html`<li>${note.severity === 'warning' ? html`<strong>Warning:</strong> ` : ''}${note.text}</li>\n`)}
 ${study.channels.map(quietPart)}
 </ul>
 </section>`;
@@ -39,13 +43,21 @@ ${facts.notes.map((note) => html`<li>${note.severity === 'warning' ? html`<stron
 `;
 }
 
-function quietPart({ channel, quietPart: part, noiseGain }: ChannelStudy): Markup {
+function quietPart({ channel, quietPart: part, noiseGain, resolution }: ChannelStudy): Markup {
   const { usedSeconds, totalSeconds, stretches } = part;
   const shown = stretches.slice(0, 5).map((at) => `${seconds(at.fromSeconds)} to ${seconds(at.toSeconds)}`);
   const more = stretches.length > shown.length ? ` and ${count(stretches.length - shown.length)} more stretches` : '';
   const where = usedSeconds < totalSeconds && shown.length > 0 ? ` (${shown.join(', ')}${more})` : '';
-  return html`<li>${channel.name}: ${seconds(usedSeconds)} of ${seconds(totalSeconds)} of the quiet recording carry the noise figures${where}; noise in use is ${percent(noiseGain, 3)} of the quiet one.</li>
+  return html`<li>${channel.name}: ${seconds(usedSeconds)} of ${seconds(totalSeconds)} of the quiet recording carry the noise figures${where}; noise in use is ${percent(noiseGain, 3)} of the quiet one.${resolved(channel.unit, resolution)}</li>
 `;
+}
+
+/** Step and effective bits in one sentence with its own blank. */
+function resolved(unit: string, { step, effectiveBits }: ChannelStudy['resolution']): string {
+  const steps = step === null ? '' : ` Values come in steps of ${quantity(step, unit)}.`;
+  return Number.isFinite(effectiveBits)
+    ? `${steps} The range in use over the quiet noise makes ${significant(effectiveBits, 2)} effective bits.`
+    : steps;
 }
 
 /** Lines that a mains harmonic above half the rate could have folded into, in one sentence with its own blank. */

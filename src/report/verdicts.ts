@@ -1,7 +1,7 @@
 import { verdictSentence } from '../core/advice/sentence.ts';
 import { corner, decibels, hertz, percent, quantity, seconds, significant } from '../core/figure.ts';
-import type { RecordingFacts } from '../core/recording/recording.ts';
 import type { ChannelStudy, Study } from '../core/study-result.ts';
+import { studyWarnings } from '../core/study-warnings.ts';
 import { html, type Markup } from './markup.ts';
 
 /** What comes first: for each channel the corner, the verdict in one sentence and its figures; then the warnings, then the reasons. */
@@ -9,21 +9,12 @@ export function verdictSection(study: Study): Markup {
   return html`<section aria-labelledby="verdict">
 <h2 id="verdict">Which filter</h2>
 ${study.channels.map(channelVerdict)}
-${warnings(study).map((text) => html`<p class="warning"><strong>Mind this:</strong> ${text}</p>\n`)}
+${studyWarnings(study).map(({ severity, text }) => html`<p class="warning"><strong>${severity === 'refusal' ? 'Do not use this:' : 'Mind this:'}</strong> ${text}</p>\n`)}
 </section>
 <section aria-labelledby="why">
 <h2 id="why">Why, and what it costs</h2>
 <div class="reasons">${study.channels.map(({ channel, advice }) => html`<div><h3>${channel.name}</h3><ul>${advice.reasons.map((reason) => html`<li>${reason}</li>`)}</ul></div>\n`)}</div>
 </section>`;
-}
-
-/** What a reader must know before trusting the verdicts. */
-function warnings(study: Study): string[] {
-  const ofFile = ({ file, notes }: RecordingFacts) => notes.map((note) => ({ ...note, text: `${file}: ${note.text}` }));
-  const ofPair = [...study.notes, ...study.channels.flatMap((channel) => channel.notes)];
-  return [...ofPair, ...ofFile(study.quiet), ...ofFile(study.active)]
-    .filter((note) => note.severity === 'warning')
-    .map((note) => note.text);
 }
 
 function channelVerdict({ channel, keep, advice }: ChannelStudy): Markup {

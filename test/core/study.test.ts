@@ -1,5 +1,6 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { makeSamples, truth } from '../../samples/make-samples.ts';
+import { inOneLine } from '../../src/core/health/finding.ts';
 import { openRecording } from '../../src/core/recording/open.ts';
 import type { ReadingOptions } from '../../src/core/recording/recording.ts';
 import { study } from '../../src/core/study.ts';
@@ -99,8 +100,25 @@ describe('the study of the sample pair', () => {
     const files = { report: 'a', plan: 'b', filtered: null };
     const document = studyDocument(found, files);
     expect(JSON.parse(JSON.stringify(document))).toEqual(document);
-    expect(Object.keys(document)).toEqual(['schema', 'version', 'settings', 'quiet', 'active', 'channels', 'files']);
-    expect(Object.keys(document.channels[0])).toEqual(['name', 'unit', 'lines', 'keep', 'advice', 'rivals']);
+    expect(Object.keys(document)).toEqual([
+      'schema',
+      'version',
+      'settings',
+      'quiet',
+      'active',
+      'channels',
+      'findings',
+      'files',
+    ]);
+    expect(Object.keys(document.channels[0])).toEqual([
+      'name',
+      'unit',
+      'lines',
+      'keep',
+      'advice',
+      'rivals',
+      'findings',
+    ]);
     expect(document.schema).toBe('quietcorner/study@1');
   });
 
@@ -170,7 +188,7 @@ describe('odd pairs', () => {
   it('questions a quiet recording that is louder than the active one', async () => {
     const loud = plus(swell(20000, 3), noise(20000, 21));
     const { channels } = await run(loud, noise(20000, 22));
-    expect(channels[0].notes.map((note) => note.text).join(' ')).toMatch(/louder in the quiet recording/);
+    expect(channels[0].findings.map(inOneLine).join(' ')).toMatch(/louder in the quiet recording/);
   });
 
   it('works on 64 samples', async () => {
@@ -182,13 +200,13 @@ describe('odd pairs', () => {
   });
 
   it('studies a pair of different rates and units, and says so', async () => {
-    const { notes } = await study({
+    const { findings } = await study({
       quiet: recording(noise(20000, 41), 'g', 120),
       active: recording(plus(swell(20000, 3), noise(20000, 42)), 'm/s²', 100),
       settings: DEFAULTS,
       version: 'test',
     });
-    expect(notes.map((note) => note.text).join(' ')).toMatch(
+    expect(findings.map(inOneLine).join(' ')).toMatch(
       /different rates, 120\.0 Hz quiet and 100\.0 Hz active.*in "g" when quiet and in "m\/s²"/,
     );
   });
