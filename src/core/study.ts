@@ -169,10 +169,10 @@ function adviceOf({ answer, lines, paired }: Worked, measured: MeasuredNoise, ra
 
 /** The step in which the quiet recording is written, and what its noise leaves of the range in use. */
 function resolution({ quiet, active }: Worked): Resolution {
-  const { lowest, highest } = active.judged.figures.quantisation;
+  const { low, high } = active.judged.figures.clipping;
   return {
-    step: quiet.judged.figures.quantisation.step,
-    effectiveBits: effectiveBits(highest - lowest, quiet.judged.subject.noiseRms),
+    step: quiet.judged.figures.step,
+    effectiveBits: effectiveBits(high.value - low.value, quiet.judged.subject.noiseRms),
   };
 }
 

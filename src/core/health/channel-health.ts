@@ -4,7 +4,7 @@ import { type ClippingFigures, ClippingFold, clippingFinding } from './clipping.
 import { type DriftFigures, driftFinding, driftOf } from './drift.ts';
 import type { Finding, Role, Subject } from './finding.ts';
 import { noiseRms } from './noise-rms.ts';
-import { type QuantisationFigures, QuantisationFold, quantisationFinding } from './quantisation.ts';
+import { QuantisationFold, quantisationFinding } from './quantisation.ts';
 import { type SpikeFigures, SpikeFold, spikeFinding } from './spikes.ts';
 import { heldFinding, type StuckFigures, StuckFold, stuckFinding } from './stuck.ts';
 
@@ -13,7 +13,8 @@ export interface ChannelFigures {
   readonly samples: number;
   readonly clipping: ClippingFigures;
   readonly stuck: StuckFigures;
-  readonly quantisation: QuantisationFigures;
+  /** Quantisation step, in the channel's unit; null where none shows. */
+  readonly step: number | null;
   readonly spikes: SpikeFigures;
 }
 
@@ -45,13 +46,13 @@ export class ChannelHealthFold {
 
   /** Ends the last run. */
   result(): ChannelFigures {
-    const quantisation = this.quantisation.result();
+    const step = this.quantisation.result();
     return {
       samples: this.samples,
       clipping: this.clipping.result(),
       stuck: this.stuck.result(),
-      quantisation,
-      spikes: this.spikes.result(quantisation.step),
+      step,
+      spikes: this.spikes.result(step),
     };
   }
 }
@@ -78,13 +79,12 @@ export function judge(
 
 /** What the samples of a channel themselves show, in a fixed order. */
 export function sampleFindings({ subject, figures, drift }: Judged): Finding[] {
-  const { clipping, stuck, quantisation, spikes } = figures;
-  const { step } = quantisation;
+  const { clipping, stuck, step, spikes } = figures;
   return [
     clippingFinding(clipping, step, subject),
     stuckFinding(stuck, { clipping, step }, subject),
     heldFinding(stuck, step, subject),
-    quantisationFinding(quantisation, subject),
+    quantisationFinding(step, clipping.high.value - clipping.low.value, subject),
     spikeFinding(spikes, subject),
     driftFinding(drift, subject),
   ].filter((finding) => finding !== null);

@@ -1,14 +1,6 @@
 import { quantity, significant } from '../figure.ts';
 import { type Finding, inRecording, ofNoisePower, type Subject } from './finding.ts';
 
-/** How finely a channel is resolved. */
-export interface QuantisationFigures {
-  /** Smallest step between values, in the channel's unit; null where the values are too fine for one to show. */
-  readonly step: number | null;
-  readonly lowest: number;
-  readonly highest: number;
-}
-
 /** Differences that are looked at, and distinct ones that are kept: the smallest. */
 const MOST_DIFFERENCES = 65_536;
 const MOST_KEPT = 48;
@@ -37,28 +29,10 @@ export class QuantisationFold {
   private readonly sizes: number[] = [];
   private readonly counts: number[] = [];
   private left = MOST_DIFFERENCES;
-  private lowest = Number.POSITIVE_INFINITY;
-  private highest = Number.NEGATIVE_INFINITY;
   private last = Number.NaN;
 
   /** Takes the next samples; where `startsRun` is true they start a new run. */
   push(samples: Float64Array, startsRun: boolean): void {
-    let { lowest, highest } = this;
-    for (let i = 0; i < samples.length; i++) {
-      const value = samples[i];
-      if (value < lowest) lowest = value;
-      if (value > highest) highest = value;
-    }
-    this.lowest = lowest;
-    this.highest = highest;
-    if (this.left > 0) this.collect(samples, startsRun);
-  }
-
-  result(): QuantisationFigures {
-    return { step: this.step(), lowest: this.lowest, highest: this.highest };
-  }
-
-  private collect(samples: Float64Array, startsRun: boolean): void {
     let last = startsRun ? Number.NaN : this.last;
     for (let i = 0; i < samples.length && this.left > 0; i++) {
       const value = samples[i];
@@ -93,8 +67,11 @@ export class QuantisationFold {
     }
   }
 
-  /** The smallest common size, or a simple part of it, of which nearly all others are multiples. */
-  private step(): number | null {
+  /**
+   * The quantisation step, in the unit of the samples: the smallest common difference, or a simple part of it, of which nearly all
+   * others are multiples. Null where the values are too fine, or too few, for one to show.
+   */
+  result(): number | null {
     const { sizes, counts } = this;
     const total = counts.reduce((sum, each) => sum + each, 0);
     if (total < FEWEST) return null;
@@ -136,18 +113,18 @@ export function effectiveBits(range: number, noise: number): number {
   return Math.log2(range / (noise * Math.sqrt(12)));
 }
 
-/** Rounding as a finding, where it is a good part of the noise; null else. */
-export function quantisationFinding({ step, lowest, highest }: QuantisationFigures, subject: Subject): Finding | null {
+/** Rounding to `step` over a range of values as a finding, where it is a good part of the noise; null else. */
+export function quantisationFinding(step: number | null, range: number, subject: Subject): Finding | null {
   const { channel, role, noiseRms } = subject;
   if (step === null) return null;
   const rounding = roundingRms(step);
   const share = noiseRms > 0 ? rounding ** 2 / noiseRms ** 2 : Number.POSITIVE_INFINITY;
   if (share < NOTE) return null;
-  const levels = Math.round((highest - lowest) / step) + 1;
+  const levels = Math.round(range / step) + 1;
   const part =
     share >= 1
       ? 'as much as all the noise that is seen'
-      : `${ofNoisePower(share)}, and ${significant(effectiveBits(highest - lowest, noiseRms), 2)} effective bits over the range seen`;
+      : `${ofNoisePower(share)}, and ${significant(effectiveBits(range, noiseRms), 2)} effective bits over the range seen`;
   return {
     kind: 'rounding',
     severity: share >= WARN ? 'warning' : 'note',

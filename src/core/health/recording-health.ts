@@ -87,7 +87,8 @@ function channelHealth(channel: Channel, rateHz: number, { health, activity, wel
   const figures = health.result();
   const judged = judge(figures, windows, { channel, role: null, rateHz });
   const { subject } = judged;
-  const { step, lowest, highest } = figures.quantisation;
+  const { step, clipping } = figures;
+  const [lowest, highest] = [clipping.low.value, clipping.high.value];
   const lines = findLines(lineLevel(welch.result()));
   const stationarity = stationarityFinding(stationaryStretches(windows, rateHz), subject);
   return {

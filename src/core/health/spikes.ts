@@ -214,7 +214,7 @@ export function spikeFinding(figures: SpikeFigures, { channel, role, samples, no
     severity: share >= WARN && role !== 'active' ? 'warning' : 'note',
     channel: channel.name,
     what: `${one ? 'One spike' : `${count(spikes)} spikes`}${inRecording(role)}, ${one ? '' : `the first at ${seconds(firstSeconds)}, the largest `}${quantity(largest, channel.unit)} at ${seconds(largestSeconds)}${times}.`,
-    effect: `${one ? 'It spreads' : 'They spread'} over all frequencies and ${share >= WARN ? 'raise' : 'hardly raise'} the noise floor${Number.isFinite(share) ? `, by ${ofNoisePower(share)}` : ''}.`,
+    effect: `${one ? 'It spreads' : 'They spread'} over all frequencies and ${share >= WARN ? '' : 'hardly '}${one ? 'raises' : 'raise'} the noise floor${Number.isFinite(share) ? `, by ${ofNoisePower(share)}` : ''}.`,
     advice:
       role === 'active'
         ? 'Where they are no true events, look for loose contacts, switching loads and lost bits.'

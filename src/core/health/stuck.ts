@@ -41,16 +41,16 @@ const REFUSE = 0.5;
 export class StuckFold {
   private readonly rateHz: number;
   private readonly lengths = new Float64Array(LENGTHS);
-  private runs: EqualRun[] = [];
+  private readonly longest: EqualRun[] = [];
   private value = Number.NaN;
-  private samples = 0;
+  private inRow = 0;
   private startSeconds = 0;
   private approach = 0;
-  /** The last four differences between neighbours, as a ring. */
+  /** The last four differences between neighbours, the newest first. */
   private readonly steps = new Float64Array(4);
-  private step = 0;
   private sumOfSteps = 0;
-  private stepsTaken = 0;
+  /** Runs of the recording that have ended: each has one step fewer than it has runs of equal samples. */
+  private gridRuns = 0;
 
   constructor(options: { readonly rateHz: number }) {
     this.rateHz = options.rateHz;
@@ -59,55 +59,70 @@ export class StuckFold {
   /** Takes the next samples; where `startsRun` is true they start a new run, at `startSeconds` in either case. */
   push(samples: Float64Array, startsRun: boolean, startSeconds: number): void {
     if (startsRun) this.close();
-    let { value, samples: inRow } = this;
+    const { rateHz } = this;
+    let { value, inRow, sumOfSteps } = this;
+    let singles = 0;
+    let step1 = this.steps[0];
+    let step2 = this.steps[1];
+    let step3 = this.steps[2];
+    let step4 = this.steps[3];
     for (let i = 0; i < samples.length; i++) {
-      if (samples[i] === value) {
-        // What led to a run is read when its first pair is found: most samples make none.
-        if (inRow === 1) this.approach = Math.max(this.steps[0], this.steps[1], this.steps[2], this.steps[3]);
-        inRow++;
+      const next = samples[i];
+      if (next === value) {
+        if (inRow++ === 1) this.begin(Math.max(step1, step2, step3, step4), startSeconds + (i - 1) / rateHz);
         continue;
       }
-      this.samples = inRow;
-      this.value = value;
-      if (inRow >= FEWEST) this.keep();
-      if (inRow > 0) this.lengths[inRow < LENGTHS ? inRow : LENGTHS - 1]++;
-      if (inRow > 0) this.moved(Math.abs(samples[i] - value));
-      value = samples[i];
+      if (inRow === 1) singles++;
+      else if (inRow > 0) this.end(value, inRow);
+      step4 = step3;
+      step3 = step2;
+      step2 = step1;
+      // The first sample of a run is reached from nowhere.
+      step1 = inRow > 0 ? Math.abs(next - value) : 0;
+      sumOfSteps += step1;
+      value = next;
       inRow = 1;
-      this.startSeconds = startSeconds + i / this.rateHz;
     }
+    this.lengths[1] += singles;
     this.value = value;
-    this.samples = inRow;
+    this.inRow = inRow;
+    this.sumOfSteps = sumOfSteps;
+    this.steps.set([step1, step2, step3, step4]);
   }
 
   /** Ends the last run. */
   result(): StuckFigures {
     this.close();
-    return { lengths: this.lengths, longest: this.runs, meanStep: this.sumOfSteps / Math.max(1, this.stepsTaken) };
-  }
-
-  private moved(size: number): void {
-    this.steps[this.step] = size;
-    this.step = (this.step + 1) & 3;
-    this.sumOfSteps += size;
-    this.stepsTaken++;
+    const { lengths, longest, sumOfSteps, gridRuns } = this;
+    const runs = lengths.reduce((sum, each) => sum + each, 0);
+    return { lengths, longest, meanStep: sumOfSteps / Math.max(1, runs - gridRuns) };
   }
 
   private close(): void {
-    if (this.samples >= FEWEST) this.keep();
-    if (this.samples > 0) this.lengths[Math.min(this.samples, LENGTHS - 1)]++;
+    if (this.inRow > 0) {
+      this.end(this.value, this.inRow);
+      this.gridRuns++;
+    }
     this.value = Number.NaN;
-    this.samples = 0;
+    this.inRow = 0;
     this.steps.fill(0);
   }
 
-  /** Keeps the run among the longest; of equals the first. */
-  private keep(): void {
-    const { samples, value, startSeconds, approach, runs } = this;
-    runs.push({ samples, value, startSeconds, approach });
-    if (runs.length <= MOST_RUNS) return;
-    const shortest = runs.reduce((least, run, i) => (run.samples <= runs[least].samples ? i : least), 0);
-    runs.splice(shortest, 1);
+  /** Notes what led to a run whose first pair is found: most samples make none. */
+  private begin(approach: number, startSeconds: number): void {
+    this.approach = approach;
+    this.startSeconds = startSeconds;
+  }
+
+  /** Counts a run and keeps it if it is among the longest; of equals the first. */
+  private end(value: number, samples: number): void {
+    const { longest, startSeconds, approach } = this;
+    this.lengths[Math.min(samples, LENGTHS - 1)]++;
+    if (samples < FEWEST) return;
+    longest.push({ samples, value, startSeconds, approach });
+    if (longest.length <= MOST_RUNS) return;
+    const shortest = longest.reduce((least, run, i) => (run.samples <= longest[least].samples ? i : least), 0);
+    longest.splice(shortest, 1);
   }
 }
 

@@ -116,24 +116,24 @@ describe('rounding', () => {
       noise(21).map((x) => 5 * step * x + 1000 * step),
       step,
     );
-    expect((judged([samples]).figures.quantisation.step as number) / step).toBeCloseTo(1, 8);
+    expect((judged([samples]).figures.step as number) / step).toBeCloseTo(1, 8);
   });
 
   it('finds the step of counts that were scaled and then cut to four decimals', () => {
     const gain = 0.048_828_125;
     const samples = noise(22).map((x) => Number((Math.round(4 * x) * gain).toFixed(4)));
-    expect((judged([samples]).figures.quantisation.step as number) / gain).toBeCloseTo(1, 3);
+    expect((judged([samples]).figures.step as number) / gain).toBeCloseTo(1, 3);
   });
 
   it('is not misled by a few values that were bridged', () => {
     const samples = stepped(noise(23), 0.1);
     for (let i = 100; i < N; i += 1000) samples[i] = (samples[i - 1] + samples[i + 1]) / 2 + 0.013;
-    expect(judged([samples]).figures.quantisation.step).toBeCloseTo(0.1, 8);
+    expect(judged([samples]).figures.step).toBeCloseTo(0.1, 8);
   });
 
   it('finds no step in values as fine as doubles, and none in too few', () => {
-    expect(judged([noise(24)]).figures.quantisation.step).toBeNull();
-    expect(judged([made(400, 1, (i) => (i < 200 ? 1 : 2))]).figures.quantisation.step).toBeNull();
+    expect(judged([noise(24)]).figures.step).toBeNull();
+    expect(judged([made(400, 1, (i) => (i < 200 ? 1 : 2))]).figures.step).toBeNull();
   });
 
   it.each([
