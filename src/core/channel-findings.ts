@@ -63,12 +63,13 @@ function totalPower({ density, widthHz }: Answer['quietSpectrum']): number {
 function interpolation({ channel, answer: { keep }, activeFacts }: ChannelEvidence): Finding | null {
   const { resampled, rateHz } = activeFacts;
   if (!resampled || keep.highHz <= 0) return null;
-  const lossDb = significant(interpolationLossDb(keep.highHz / rateHz), 2);
+  const lossDb = interpolationLossDb(keep.highHz / rateHz);
+  const cost = lossDb < 0.01 ? 'less than 0.01' : `up to ${significant(lossDb, 2)}`;
   return {
     kind: 'interpolation',
     severity: 'note',
     channel: channel.name,
-    what: `The samples of the active recording stand unevenly; interpolating them costs up to ${lossDb} dB at the keep-band edge of ${hertz(keep.highHz, 3)}.`,
+    what: `The samples of the active recording stand unevenly; interpolating them costs ${cost} dB at the keep-band edge of ${hertz(keep.highHz, 3)}.`,
     effect: 'The signal is read too low by that, and noise near half the rate by more.',
     advice: 'Let a timer start each sample, or log faster.',
   };

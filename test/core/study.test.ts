@@ -130,6 +130,8 @@ describe('the study of the sample pair', () => {
       for (const figure of ['noiseBeforeRms', 'noiseAfterRms', 'droopDb', 'wienerRatio', 'signalKept'] as const)
         expect(Math.abs(channel.advice[figure] / first.advice[figure] - 1)).toBeLessThan(1e-12);
       expect(channel.lines).toEqual(first.lines);
+      expect(channel.findings).toEqual(first.findings);
+      expect(channel.findings.filter(({ severity }) => severity !== 'note')).toEqual([]);
       for (const trace of ['before', 'after'] as const) {
         expect(channel.simulation[trace].low).toEqual(first.simulation[trace].low);
         expect(channel.simulation[trace].high).toEqual(first.simulation[trace].high);
