@@ -33,7 +33,7 @@ export function channelFindings(evidence: ChannelEvidence): Finding[] {
     [
       swapped(evidence),
       stationarityFinding(quiet.stationary, subject),
-      ...sampleFindings(quiet.judged),
+      ...sampleFindings(quiet.judged, quiet.part.stretches),
       ...mainsFindings(lines, answer.keep.highHz, subject),
       ...sampleFindings(active.judged),
       interpolation(evidence),

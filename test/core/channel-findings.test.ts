@@ -56,6 +56,27 @@ describe('findings of a pair', () => {
     );
   });
 
+  it('warns of spikes in the part of the quiet recording that is used, and only notes them elsewhere', async () => {
+    const knocked = quietNoise.map((x, i) => (i > 4000 && i < 8000 ? 20 * x : x));
+    const active = sum(activeNoise, signal);
+    const spikes = async (size: number, ...places: number[]) => {
+      const spiked = knocked.map((x, i) => (places.includes(i) ? x + size : x));
+      return (await findingsOf(spiked, active)).filter(({ kind }) => kind === 'spikes');
+    };
+    // One of 900 makes its surroundings unlike the rest, so that they are cut out with it; six of 25 stay.
+    const [cut] = await spikes(900, 6000);
+    expect(cut).toMatchObject({
+      severity: 'note',
+      effect: 'It lies in a part of the recording that is left out, and spoils nothing.',
+    });
+    const [kept] = await spikes(25, 9000, 11_000, 13_000, 15_000, 17_000, 19_000);
+    expect(kept).toMatchObject({
+      severity: 'warning',
+      what: expect.stringMatching(/^6 spikes .* the first at 45\.0 s/),
+    });
+    expect(kept.effect).toMatch(/raise the noise floor, by 1\d % of the noise power/);
+  });
+
   it('warns of mains within the keep band', async () => {
     const hum = sum(
       quietNoise,

@@ -5,7 +5,7 @@ import { type DriftFigures, driftFinding, driftOf } from './drift.ts';
 import type { Finding, Role, Subject } from './finding.ts';
 import { noiseRms } from './noise-rms.ts';
 import { QuantisationFold, quantisationFinding } from './quantisation.ts';
-import { type SpikeFigures, SpikeFold, spikeFinding } from './spikes.ts';
+import { type SpikeFigures, SpikeFold, spikeFinding, type UsedStretch } from './spikes.ts';
 import { heldFinding, type StuckFigures, StuckFold, stuckFinding } from './stuck.ts';
 
 /** What the health folds measured on one channel. */
@@ -77,15 +77,21 @@ export function judge(
   };
 }
 
-/** What the samples of a channel themselves show, in a fixed order. */
-export function sampleFindings({ subject, figures, drift }: Judged): Finding[] {
+/**
+ * What the samples of a channel themselves show, in a fixed order. `used` are the stretches that carry the noise figures, null where all
+ * of the recording does.
+ */
+export function sampleFindings(
+  { subject, figures, drift }: Judged,
+  used: readonly UsedStretch[] | null = null,
+): Finding[] {
   const { clipping, stuck, step, spikes } = figures;
   return [
     clippingFinding(clipping, step, subject),
     stuckFinding(stuck, { clipping, step }, subject),
     heldFinding(stuck, step, subject),
     quantisationFinding(step, clipping.high.value - clipping.low.value, subject),
-    spikeFinding(spikes, subject),
+    spikeFinding(spikes, used, subject),
     driftFinding(drift, subject),
   ].filter((finding) => finding !== null);
 }

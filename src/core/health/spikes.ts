@@ -202,22 +202,46 @@ function select(values: Float64Array, n: number, place: number): number {
   return values[place];
 }
 
-/** Spikes as a finding; null where there are none. */
-export function spikeFinding(figures: SpikeFigures, { channel, role, samples, noiseRms }: Subject): Finding | null {
+/** A stretch of a recording, seconds from its first sample. */
+export interface UsedStretch {
+  readonly fromSeconds: number;
+  readonly toSeconds: number;
+}
+
+/**
+ * Spikes as a finding; null where there are none. `used` are the stretches that carry the noise figures, null where all does: what
+ * lies outside spoils nothing.
+ */
+export function spikeFinding(
+  figures: SpikeFigures,
+  used: readonly UsedStretch[] | null,
+  { channel, role, samples, noiseRms }: Subject,
+): Finding | null {
   const { spikes, largest, largestSeconds, firstSeconds, power } = figures;
   if (spikes === 0) return null;
   const share = noiseRms > 0 ? power / samples / noiseRms ** 2 : Number.POSITIVE_INFINITY;
   const times = noiseRms > 0 ? `, ${significant(Math.abs(largest) / noiseRms, 2)} times the noise RMS` : '';
   const one = spikes === 1;
+  const inside =
+    used === null ||
+    used.some(({ fromSeconds, toSeconds }) => largestSeconds >= fromSeconds && largestSeconds < toSeconds);
   return {
     kind: 'spikes',
-    severity: share >= WARN && role !== 'active' ? 'warning' : 'note',
+    severity: share >= WARN && inside && role !== 'active' ? 'warning' : 'note',
     channel: channel.name,
     what: `${one ? 'One spike' : `${count(spikes)} spikes`}${inRecording(role)}, ${one ? '' : `the first at ${seconds(firstSeconds)}, the largest `}${quantity(largest, channel.unit)} at ${seconds(largestSeconds)}${times}.`,
-    effect: `${one ? 'It spreads' : 'They spread'} over all frequencies and ${share >= WARN ? '' : 'hardly '}${one ? 'raises' : 'raise'} the noise floor${Number.isFinite(share) ? `, by ${ofNoisePower(share)}` : ''}.`,
+    effect: inside
+      ? spreads(one, share)
+      : `${one ? 'It' : 'The largest'} lies in a part of the recording that is left out, and spoils nothing.`,
     advice:
       role === 'active'
         ? 'Where they are no true events, look for loose contacts, switching loads and lost bits.'
         : 'Look for loose contacts, switching loads and lost bits: a low-pass smears a spike but does not remove it.',
   };
+}
+
+function spreads(one: boolean, share: number): string {
+  const raised = `${share >= WARN ? '' : 'hardly '}${one ? 'raises' : 'raise'}`;
+  const by = Number.isFinite(share) ? `, by ${ofNoisePower(share)}` : '';
+  return `${one ? 'It spreads' : 'They spread'} over all frequencies and ${raised} the noise floor${by}.`;
 }
