@@ -1,9 +1,7 @@
 import type { Channel } from '../core/recording/recording.ts';
 import type { FilteredSink } from '../core/simulation/on-active.ts';
+import { NumberWriter } from './number-writer.ts';
 import { GrowingFile } from './output-files.ts';
-
-/** Digits of a filtered value: beyond any converter, short of the noise of the last bits. */
-const DIGITS = 9;
 
 /**
  * CSV of the filtered recording: time in seconds from the first sample, then raw and filtered values of every channel.
@@ -16,22 +14,22 @@ export function filteredCsv(
 ): { file: GrowingFile; sink: FilteredSink } {
   const file = new GrowingFile(path);
   const header = ['time [s]', ...channels.flatMap((channel) => [title(channel, ''), title(channel, ' filtered')])];
+  const writer = new NumberWriter();
   let first = true;
   const sink: FilteredSink = async (block, before, after) => {
-    const lines = Array.from({ length: block.length }, (_, i) => {
-      const seconds = Number((block.startSeconds + i / rateHz).toFixed(9));
-      const values = before.map((raw, c) => `,${rounded(raw[i])},${rounded(after[c][i])}`);
-      return `${seconds}${values.join('')}\n`;
-    });
-    if (first) lines.unshift(`${header.map(field).join(',')}\n`);
+    if (first) await file.write(`${header.map(field).join(',')}\n`);
     first = false;
-    await file.write(lines.join(''));
+    for (let i = 0; i < block.length; i++) {
+      writer.seconds(block.startSeconds + i / rateHz);
+      for (let c = 0; c < before.length; c++) {
+        writer.value(before[c][i]);
+        writer.value(after[c][i]);
+      }
+      writer.endLine();
+    }
+    await file.write(writer.take());
   };
   return { file, sink };
-}
-
-function rounded(value: number): number {
-  return Number(value.toPrecision(DIGITS));
 }
 
 function title({ name, unit }: Channel, suffix: string): string {

@@ -1,6 +1,5 @@
-import { once } from 'node:events';
-import { createWriteStream, type WriteStream } from 'node:fs';
-import { access, constants, mkdir, rename, rm } from 'node:fs/promises';
+import { rmSync } from 'node:fs';
+import { access, constants, type FileHandle, mkdir, open, rename, rm } from 'node:fs/promises';
 import { basename, dirname, join } from 'node:path';
 import { UserError } from '../core/user-error.ts';
 
@@ -26,37 +25,44 @@ export async function writeWhole(path: string, content: string): Promise<void> {
   }
 }
 
-/** A file written piece by piece beside its target; `keep` renames it into place, `drop` leaves nothing behind. */
+/** Files begun and not yet kept or dropped. */
+const begun = new Set<string>();
+const INTERRUPTIONS = { SIGINT: 2, SIGTERM: 15 };
+
+/** Leaves no partial file behind and ends as shells expect: 128 and the signal's number. */
+function interrupted(signal: keyof typeof INTERRUPTIONS): never {
+  for (const path of begun) rmSync(path, { force: true });
+  process.exit(128 + INTERRUPTIONS[signal]);
+}
+
+/** A file written piece by piece beside its target; `keep` renames it into place, `drop` and an interruption leave nothing behind. */
 export class GrowingFile {
   private readonly path: string;
   private readonly partPath: string;
-  private readonly stream: WriteStream;
-  private failure: unknown = null;
+  private handle: FileHandle | null = null;
 
   constructor(path: string) {
     this.path = path;
     this.partPath = join(dirname(path), `.${basename(path)}.${process.pid}.part`);
-    this.stream = createWriteStream(this.partPath);
-    this.stream.on('error', (error) => {
-      this.failure = error;
-    });
   }
 
-  /** Waits while the disk is behind, so that memory stays flat. */
-  async write(text: string): Promise<void> {
-    if (this.failure) throw cannotWrite(this.path, this.failure);
-    if (!this.stream.write(text)) await Promise.race([once(this.stream, 'drain'), once(this.stream, 'close')]);
+  /** Writes all of it before it returns, so that memory stays flat and bytes may be used again. */
+  async write(content: string | Uint8Array): Promise<void> {
+    try {
+      this.handle ??= await this.begin();
+      await this.handle.writeFile(content);
+    } catch (error) {
+      throw cannotWrite(this.path, error);
+    }
   }
 
   async keep(): Promise<void> {
-    await this.close();
-    if (this.failure) {
-      await this.drop();
-      throw cannotWrite(this.path, this.failure);
-    }
     try {
+      await this.close();
       await rename(this.partPath, this.path);
+      begun.delete(this.partPath);
     } catch (error) {
+      await this.drop();
       throw cannotWrite(this.path, error);
     }
   }
@@ -64,12 +70,22 @@ export class GrowingFile {
   async drop(): Promise<void> {
     await this.close();
     await rm(this.partPath, { force: true });
+    begun.delete(this.partPath);
+  }
+
+  private begin(): Promise<FileHandle> {
+    if (process.listenerCount('SIGINT', interrupted) === 0) {
+      process.on('SIGINT', interrupted);
+      process.on('SIGTERM', interrupted);
+    }
+    begun.add(this.partPath);
+    return open(this.partPath, 'w');
   }
 
   private async close(): Promise<void> {
-    if (this.stream.closed) return;
-    this.stream.end();
-    await once(this.stream, 'close');
+    const { handle } = this;
+    this.handle = null;
+    await handle?.close();
   }
 }
 

@@ -171,7 +171,8 @@ function sumOf(values: Float64Array, from: number, to: number): number {
 
 /** One-sided density: 0 Hz and Nyquist have no mirror image and count once. */
 function toDensity(powers: Float64Array, scale: number): Float64Array {
-  const density = powers.map((power) => power * scale);
+  const density = new Float64Array(powers.length);
+  for (let k = 0; k < powers.length; k++) density[k] = powers[k] * scale;
   density[0] /= 2;
   density[density.length - 1] /= 2;
   return density;
