@@ -1,13 +1,8 @@
 import type { LimitName, Limits, Rival } from '../core/advice/advice.ts';
 import { corner, decibels, hertz, quantity, seconds, significant } from '../core/figure.ts';
+import { FAMILY_NAMES } from '../core/filter/name.ts';
 import type { ChannelStudy } from '../core/study-result.ts';
 import { html, type Markup } from './markup.ts';
-
-const FAMILY_NAMES: Record<Rival['family'], string> = {
-  rc: 'RC, one pole',
-  butterworth: 'Butterworth',
-  bessel: 'Bessel',
-};
 
 /**
  * All rivals of a channel, sorted so that the winner's reason is visible: those that keep every limit first, the simplest on

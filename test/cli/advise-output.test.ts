@@ -1,15 +1,10 @@
-import { execFile } from 'node:child_process';
 import { createHash } from 'node:crypto';
 import { mkdtemp, readdir, readFile, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { fileURLToPath } from 'node:url';
-import { promisify } from 'node:util';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { truth } from '../../samples/make-samples.ts';
-
-const run = promisify(execFile);
-const root = fileURLToPath(new URL('../..', import.meta.url));
+import { buildProgram, quietcorner, root } from './program.ts';
 
 /** One call of the bundled program on the sample pair with everything it can write. */
 describe('advise --filtered --json on the sample pair', () => {
@@ -22,7 +17,7 @@ describe('advise --filtered --json on the sample pair', () => {
   };
 
   beforeAll(async () => {
-    await run('node', ['src/build/bundle.mjs'], { cwd: root });
+    await buildProgram();
     folder = await mkdtemp(join(tmpdir(), 'quietcorner-'));
     const words = [
       'advise',
@@ -33,7 +28,7 @@ describe('advise --filtered --json on the sample pair', () => {
       '--out',
       folder,
     ];
-    const { stdout } = await run('node', [join(root, 'dist', 'quietcorner.js'), ...words], { cwd: root });
+    const { stdout } = await quietcorner(root, ...words);
     document = JSON.parse(stdout);
   }, 60_000);
 
@@ -102,7 +97,7 @@ describe('advise --filtered --json on the sample pair', () => {
   it('leaves the same report but for its pictures and time when run again', async () => {
     const again = join(folder, 'again');
     const words = ['advise', 'samples/cabin-quiet.csv', 'samples/cabin-active.csv', '--out', again];
-    await run('node', [join(root, 'dist', 'quietcorner.js'), ...words], { cwd: root });
+    await quietcorner(root, ...words);
     const figures = async (path: string) =>
       (await readFile(path, 'utf8')).replace(/data:image\/png;base64,[^"]+/g, '').replace(/<code>[^<]*<\/code>/g, '');
     expect(await figures(join(again, 'cabin-active.report.html'))).toBe(await figures(document.files.report));

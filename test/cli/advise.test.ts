@@ -1,40 +1,22 @@
-import { execFile } from 'node:child_process';
 import { mkdtemp, readdir, rm, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { fileURLToPath } from 'node:url';
-import { promisify } from 'node:util';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { buildProgram, root, quietcorner as start } from './program.ts';
 
-const run = promisify(execFile);
-const root = fileURLToPath(new URL('../..', import.meta.url));
-const program = join(root, 'dist', 'quietcorner.js');
 const quiet = join(root, 'samples', 'cabin-quiet.csv');
 const active = join(root, 'samples', 'cabin-active.csv');
 
 let folder: string;
 
 beforeAll(async () => {
-  await run('node', ['src/build/bundle.mjs'], { cwd: root });
+  await buildProgram();
   folder = await mkdtemp(join(tmpdir(), 'quietcorner-'));
 }, 60_000);
 
 afterAll(() => rm(folder, { recursive: true, force: true }));
 
-interface Outcome {
-  code: number;
-  stdout: string;
-  stderr: string;
-}
-
-async function quietcorner(...words: string[]): Promise<Outcome> {
-  try {
-    const { stdout, stderr } = await run('node', [program, ...words], { cwd: folder });
-    return { code: 0, stdout, stderr };
-  } catch (error) {
-    return error as Outcome;
-  }
-}
+const quietcorner = (...words: string[]) => start(folder, ...words);
 
 async function fixture(name: string, content: string | Buffer): Promise<string> {
   const path = join(folder, name);

@@ -1,40 +1,22 @@
-import { execFile } from 'node:child_process';
 import { mkdtemp, rm, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { fileURLToPath } from 'node:url';
-import { promisify } from 'node:util';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { seededRandom } from '../campaign/seeded-random.ts';
+import { buildProgram, quietcorner, root } from './program.ts';
 
-const run = promisify(execFile);
-const root = fileURLToPath(new URL('../..', import.meta.url));
 const sample = (name: string) => join(root, 'samples', name);
 
 let folder: string;
-let program: string;
 
 beforeAll(async () => {
   folder = await mkdtemp(join(tmpdir(), 'quietcorner-vet-'));
-  program = join(root, 'src', 'cli', 'main.ts');
+  await buildProgram();
 }, 60_000);
 
 afterAll(() => rm(folder, { recursive: true, force: true }));
 
-interface Outcome {
-  code: number;
-  stdout: string;
-  stderr: string;
-}
-
-async function vet(...words: string[]): Promise<Outcome> {
-  try {
-    const { stdout, stderr } = await run('node', ['--import', 'tsx', program, 'vet', ...words], { cwd: root });
-    return { code: 0, stdout, stderr };
-  } catch (error) {
-    return error as Outcome;
-  }
-}
+const vet = (...words: string[]) => quietcorner(root, 'vet', ...words);
 
 /** Noise that clips at 2, is stuck for 200 samples from 10 s on, and has a spike at 30 s. */
 async function faulty(): Promise<string> {

@@ -1,7 +1,12 @@
 import { corner } from '../figure.ts';
 import type { Filter } from './filter.ts';
 
-const FAMILY_NAMES: Record<Filter['family'], string> = { rc: 'RC', butterworth: 'Butterworth', bessel: 'Bessel' };
+/** Families as people call them. */
+export const FAMILY_NAMES: Readonly<Record<Filter['family'], string>> = {
+  rc: 'RC',
+  butterworth: 'Butterworth',
+  bessel: 'Bessel',
+};
 
 /** A filter as people say it: `one-pole RC low-pass, corner 3.0 Hz` or `Butterworth low-pass, order 3, corner 4.1 Hz`. */
 export function filterName({ shape, family, order, cornerHz }: Filter): string {
